@@ -1,0 +1,5 @@
+"""``python -m closures``: the same command."""
+
+from closures.command import main
+
+main()

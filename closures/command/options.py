@@ -1,0 +1,60 @@
+"""Options shared by the sub-commands; those of a case come from ``tables/case.toml``."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from typing import Any
+
+import click
+
+from closures.case import keys
+
+Decorator = Callable[[Callable[..., Any]], Callable[..., Any]]
+
+
+def output_options(*formats: str) -> Decorator:
+    """Add ``--format`` with the given choices (the first is the default) and ``--output``."""
+
+    def decorate(function: Callable[..., Any]) -> Callable[..., Any]:
+        function = click.option(
+            "--output", "-o", default="-", metavar="FILE", help="File to write; - for standard output."
+        )(function)
+        return click.option(
+            "--format", "form", type=click.Choice(formats), default=formats[0], show_default=True,
+            help="Form of the output.",
+        )(function)
+
+    return decorate
+
+
+def case_options(*tables: str) -> Decorator:
+    """Add one option for every key of the named tables of a case file."""
+
+    def decorate(function: Callable[..., Any]) -> Callable[..., Any]:
+        for path, key in reversed(keys().items()):
+            table, _, name = path.partition(".")
+            if table not in tables:
+                continue
+            flag = f"--{name.replace('_', '-')}"
+            if key.kind == "flag":
+                option = click.option(flag, path, is_flag=True, default=None, help=key.help)
+            else:
+                metavar = "|".join(key.choices) or key.kind.upper()
+                option = click.option(flag, path, metavar=metavar, help=key.help)
+            function = option(function)
+        return function
+
+    return decorate
+
+
+def raw_case(values: dict[str, Any]) -> dict[str, Any]:
+    """Turn the options that were given into the nested mapping of a case file."""
+    raw: dict[str, Any] = {}
+    for path, value in values.items():
+        if value is None:
+            continue
+        table, _, name = path.partition(".")
+        if keys()[path].kind == "count":
+            value = int(value) if str(value).isdigit() else value
+        raw.setdefault(table, {})[name] = value
+    return raw

@@ -1,0 +1,52 @@
+"""Writing: to standard output, or to a file that appears whole or not at all."""
+
+from __future__ import annotations
+
+import os
+import sys
+import tempfile
+
+from walllaw.errors import InputError
+
+
+def write_file(path: str, content: str) -> None:
+    """Write a text file through a temporary file in the same folder and a rename.
+
+    Raises
+    ------
+    InputError
+        If the folder cannot be written; the old file, if any, is left as it was.
+    """
+    folder = os.path.dirname(os.path.abspath(path))
+    temporary = ""
+    try:
+        handle, temporary = tempfile.mkstemp(prefix=".closures-", dir=folder)
+        with os.fdopen(handle, "w", encoding="utf-8", newline="\n") as file:
+            file.write(content)
+            file.flush()
+            os.fsync(file.fileno())
+        os.chmod(temporary, 0o666 & ~_umask())
+        os.replace(temporary, path)
+    except OSError as error:
+        if temporary and os.path.exists(temporary):
+            os.unlink(temporary)
+        raise InputError(
+            "--output", path, "a file that can be written", error.strerror or str(error)
+        ) from None
+
+
+def _umask() -> int:
+    mask = os.umask(0)
+    os.umask(mask)
+    return mask
+
+
+def emit(content: str, output: str = "-") -> None:
+    """Write to standard output (``-``) or to a file."""
+    if not content.endswith("\n"):
+        content += "\n"
+    if output != "-":
+        write_file(output, content)
+        return
+    sys.stdout.write(content)
+    sys.stdout.flush()
