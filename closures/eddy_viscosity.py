@@ -44,7 +44,8 @@ def spalart_allmaras_chi(ratio: Floats, c_v1: float) -> Floats:
         cube = s * s * s
         # f/f' with s^3 divided out of both, so that tiny q does not underflow
         s = s - (s - near - near / cube) / (4.0 - 3.0 * near / s)
-    return c_v1 * np.where(q < _LARGE, s, q + 1.0 / (np.maximum(q, 1.0) * np.maximum(q, 1.0)))
+    inverse = 1.0 / np.maximum(q, 1.0)
+    return c_v1 * np.where(q < _LARGE, s, q + inverse * inverse)
 
 
 def menter_1997_ratio(chi: Floats, A_plus: float, kappa: float) -> Floats:
