@@ -43,6 +43,14 @@ class Sheet:
         found = {finding.severity for finding in self.findings}
         return next((severity for severity in SEVERITIES if severity in found), None)
 
+    def without(self, *parts: str) -> Sheet:
+        """Return the sheet less some parts, and less the findings about them."""
+        data = {k: v for k, v in self.data.items() if k not in parts}
+        kept = tuple(f for f in self.findings if f.quantity.partition(".")[0] not in parts)
+        data["findings"] = [f.as_dict() for f in kept]
+        data["units"] = {k: v for k, v in data["units"].items() if k.partition(".")[0] not in parts}
+        return Sheet(data, kept)
+
     def to_json(self) -> str:
         """Return the sheet as JSON text: SI numbers, no NaN, no null."""
         return json.dumps(self.data, indent=2, ensure_ascii=False, allow_nan=False)

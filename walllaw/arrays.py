@@ -59,6 +59,9 @@ class Interval:
 FINITE = Interval()
 POSITIVE = Interval(0.0, open_low=True)
 NONNEGATIVE = Interval(0.0)
+# a log law whose exponentials stay inside double precision
+KAPPA = Interval(0.0, 1.0, open_low=True)
+INTERCEPT = Interval(-100.0, 100.0)
 
 
 def _convert(name: str, value: FloatLike) -> Floats:

@@ -8,19 +8,41 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import NONNEGATIVE, POSITIVE, FloatLike, Floats
+from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval
+from walllaw.duct_flow import (
+    entrance_length_laminar,
+    entrance_length_laminar_channel,
+    entrance_length_turbulent,
+    regime,
+)
 from walllaw.errors import InputError
 from walllaw.relation import relation
 
-# Below this logarithm of the radius ratio the series is shorter than the loss by cancellation.
-_SERIES_BELOW = 2.0
-_SERIES_TERMS = 16  # L^(2n) 2n/(2n+1)! falls below 1e-17 of the sum for L = 2 after 13 terms
-_ODD_TERMS = 8  # 1 - tanh(n pi/2) < 1e-17 for odd n above 13
+__all__ = [
+    "Passage",
+    "annulus",
+    "annulus_constant",
+    "channel",
+    "entrance_length_laminar",
+    "entrance_length_laminar_channel",
+    "entrance_length_turbulent",
+    "jones_rectangle",
+    "pipe",
+    "rectangle",
+    "rectangle_constant",
+    "regime",
+]
+
+_RATIO = Interval(0.0, 1.0)
+# Up to this logarithm of the radius ratio the series is used: the direct form loses digits below.
+_SERIES_UP_TO = 2.0
+_SERIES_TERMS = 13  # L^(2n) 2n/(2n+1)! falls below 1e-17 of the sum for L = 2
+_ODD_TERMS = 6  # 2/(exp(n pi) + 1)/n^5 falls below 1e-18 for odd n from 11
 
 
 @dataclass(frozen=True, slots=True)
 class Passage:
-    """A passage of constant section; all fields float or array of one shape.
+    """A passage of constant section; every field is a float or an array of one shape.
 
     Attributes
     ----------
@@ -31,7 +53,7 @@ class Passage:
     gap : float or ndarray
         Smallest distance between walls: diameter, height, shorter side, radial gap [m].
     laminar_constant : float or ndarray
-        Darcy friction factor times Reynolds number in laminar flow, on the hydraulic diameter [-].
+        Darcy friction factor times Reynolds number in laminar flow, on the hydraulic diameter [1].
     """
 
     area: Any
@@ -40,9 +62,19 @@ class Passage:
     laminar_constant: Any
 
     @property
+    def wetted_perimeter(self) -> Any:
+        """Wetted perimeter [m]; None for a plane channel of unknown width."""
+        return None if self.area is None else 4.0 * self.area / self.hydraulic_diameter
+
+    @property
     def shape_factor(self) -> Any:
-        """Laminar-equivalent diameter over hydraulic diameter [-] (jones-1976)."""
+        """Laminar-equivalent diameter over hydraulic diameter, 64/(f Re) [1] (jones-1976)."""
         return relation("ducts", "laminar_equivalent_diameter")["pipe"] / self.laminar_constant
+
+    @property
+    def laminar_equivalent_diameter(self) -> Any:
+        """Diameter with which a pipe's turbulent friction law fits the passage [m] (jones-1976)."""
+        return self.shape_factor * self.hydraulic_diameter
 
 
 def pipe(diameter: FloatLike) -> Passage:
@@ -50,13 +82,17 @@ def pipe(diameter: FloatLike) -> Passage:
 
     Parameters
     ----------
-    diameter : float or array
+    diameter : array_like
         Inside diameter [m], positive.
 
     Raises
     ------
     InputError
         If a value is not positive and finite.
+
+    References
+    ----------
+    shah-london-1978
 
     Examples
     --------
@@ -65,7 +101,9 @@ def pipe(diameter: FloatLike) -> Passage:
     """
     shape, (d,) = arrays.columns(diameter=(diameter, POSITIVE))
     constant = relation("ducts", "friction_laminar")["pipe"]
-    return Passage(shape(0.25 * np.pi * d * d), shape(d), shape(d), shape(np.full(d.size, constant)))
+    return Passage(
+        shape(0.25 * np.pi * d * d), shape(d), shape(d), shape(np.full(d.size, constant))
+    )
 
 
 def channel(height: FloatLike, width: FloatLike | None = None) -> Passage:
@@ -73,15 +111,19 @@ def channel(height: FloatLike, width: FloatLike | None = None) -> Passage:
 
     Parameters
     ----------
-    height : float or array
+    height : array_like
         Distance between the walls [m], positive.
-    width : float or array, optional
-        Only to have a flow area [m].
+    width : array_like, optional
+        Only to have a flow area [m], positive; the side walls are not counted as wetted.
 
     Raises
     ------
     InputError
         If a value is not positive and finite.
+
+    References
+    ----------
+    shah-london-1978
 
     Examples
     --------
@@ -91,19 +133,10 @@ def channel(height: FloatLike, width: FloatLike | None = None) -> Passage:
     shape, (h, w) = arrays.columns(
         height=(height, POSITIVE), width=(1.0 if width is None else width, POSITIVE)
     )
-    constant = np.full(max(h.size, w.size), relation("ducts", "friction_laminar")["channel"])
+    ones = np.ones(max(h.size, w.size))
+    constant = relation("ducts", "friction_laminar")["channel"] * ones
     area = None if width is None else shape(h * w)
-    return Passage(area, shape(2.0 * h + 0.0 * w), shape(h + 0.0 * w), shape(constant))
-
-
-def _rectangle_constant(aspect: Floats) -> Floats:
-    r = relation("ducts", "rectangle_series")
-    odd = np.arange(1.0, 2.0 * _ODD_TERMS, 2.0)[:, np.newaxis]
-    # the sum with tanh = 1 is known; only its small deficit is summed
-    deficit = 2.0 / (np.exp(np.minimum(odd * np.pi / np.maximum(aspect, 1e-3), 700.0)) + 1.0)
-    total = r["odd_sum"] - np.add.reduce(deficit / odd**5, axis=0)
-    plane = relation("ducts", "friction_laminar")["channel"]
-    return plane / (np.square(1.0 + aspect) * (1.0 - r["factor"] * aspect * total))
+    return Passage(area, shape(2.0 * h * ones), shape(h * ones), shape(constant))
 
 
 def rectangle(width: FloatLike, height: FloatLike) -> Passage:
@@ -111,17 +144,13 @@ def rectangle(width: FloatLike, height: FloatLike) -> Passage:
 
     Parameters
     ----------
-    width, height : float or array
+    width, height : array_like
         The two sides [m], positive, in any order.
 
     Raises
     ------
     InputError
         If a value is not positive and finite.
-
-    Notes
-    -----
-    Laminar constant by the exact series; 1e-15 relative for every aspect ratio.
 
     References
     ----------
@@ -133,30 +162,10 @@ def rectangle(width: FloatLike, height: FloatLike) -> Passage:
     56.90830754
     """
     shape, (w, h) = arrays.columns(width=(width, POSITIVE), height=(height, POSITIVE))
-    short, long = np.minimum(w, h), np.maximum(w, h)
-    aspect = short / long
-    return Passage(
-        shape(w * h),
-        shape(2.0 * short / (1.0 + aspect)),
-        shape(short),
-        shape(_rectangle_constant(aspect)),
-    )
-
-
-def _annulus_constant(ratio: Floats) -> Floats:
-    """f Re = 128 sinh^2(L/2)/(cosh L - sinh(L)/L), L = -ln(ratio): no cancellation as ratio -> 1."""
-    log = np.minimum(-np.log(ratio), 700.0)
-    small = np.minimum(log, _SERIES_BELOW)
-    square = small * small
-    term, series = square / 3.0, square / 3.0
-    for n in range(2, _SERIES_TERMS):
-        # terms L^(2n) 2n/(2n+1)!
-        term = term * square / ((2 * n - 2) * (2 * n + 1))
-        series = series + term
-    large = np.maximum(log, _SERIES_BELOW)
-    direct = np.cosh(large) - np.sinh(large) / large
-    bottom = np.where(log < _SERIES_BELOW, series, direct)
-    return 2.0 * relation("ducts", "friction_laminar")["pipe"] * np.square(np.sinh(0.5 * log)) / bottom
+    short = np.minimum(w, h)
+    aspect = short / np.maximum(w, h)
+    diameter = 2.0 * short / (1.0 + aspect)
+    return Passage(shape(w * h), shape(diameter), shape(short), shape(_rectangle(aspect)))
 
 
 def annulus(inner_diameter: FloatLike, outer_diameter: FloatLike) -> Passage:
@@ -164,7 +173,7 @@ def annulus(inner_diameter: FloatLike, outer_diameter: FloatLike) -> Passage:
 
     Parameters
     ----------
-    inner_diameter, outer_diameter : float or array
+    inner_diameter, outer_diameter : array_like
         Diameters of the two walls [m], 0 < inner < outer.
 
     Raises
@@ -172,13 +181,9 @@ def annulus(inner_diameter: FloatLike, outer_diameter: FloatLike) -> Passage:
     InputError
         If a value is not positive and finite, or inner is not below outer.
 
-    Notes
-    -----
-    Laminar constant in closed form, 1e-15 relative for every radius ratio.
-
     References
     ----------
-    shah-london-1978
+    shah-london-1978, jones-leung-1981
 
     Examples
     --------
@@ -188,86 +193,156 @@ def annulus(inner_diameter: FloatLike, outer_diameter: FloatLike) -> Passage:
     shape, (i, o) = arrays.columns(
         inner_diameter=(inner_diameter, POSITIVE), outer_diameter=(outer_diameter, POSITIVE)
     )
-    if (i >= o).any():
-        raise InputError("inner_diameter", f"{i.max():g}", "less than outer_diameter")
-    gap = 0.5 * (o - i)
+    bad = i >= o
+    if bad.any():
+        first = int(np.argmax(bad))
+        given = f"{float(i[min(first, i.size - 1)]):g} inside {float(o[min(first, o.size - 1)]):g}"
+        raise InputError("inner_diameter", given, "less than outer_diameter")
     area = 0.25 * np.pi * (o - i) * (o + i)
-    return Passage(shape(area), shape(2.0 * gap), shape(gap), shape(_annulus_constant(i / o)))
+    return Passage(shape(area), shape(o - i), shape(0.5 * (o - i)), shape(_annulus(i / o)))
 
 
-def entrance_length_laminar(reynolds: FloatLike) -> Any:
-    """Laminar entrance length over the diameter, Durst et al. 2005.
+def rectangle_constant(aspect_ratio: FloatLike) -> Any:
+    """Laminar Darcy friction factor times Reynolds number of a rectangular duct.
 
     Parameters
     ----------
-    reynolds : float or array
-        On the hydraulic diameter [-], from 0.
+    aspect_ratio : array_like
+        Shorter over longer side [1], 0 (parallel plates) to 1 (square).
 
     Returns
     -------
     float or ndarray
-        Entrance length over hydraulic diameter [-].
-
-    Warns
-    -----
-    RangeWarning
-        Above Re = 2300.
+        f Re on the hydraulic diameter [1], 96 to 56.9.
 
     Raises
     ------
     InputError
-        If a value is negative or not finite.
+        If a value is not from 0 to 1.
+
+    Notes
+    -----
+    f Re = 96/{(1 + a)^2 [1 - (192 a/pi^5) sum tanh(n pi/(2a))/n^5]}, n odd. The sum with tanh = 1
+    is known in closed form; six terms of the deficit reach double precision for every aspect
+    ratio. Measured against 50 digits: 5 ulp.
 
     References
     ----------
-    durst-2005
+    shah-london-1978
 
     Examples
     --------
-    >>> round(entrance_length_laminar(1000.0), 2)
-    56.72
+    >>> round(rectangle_constant(0.5) / 4, 9)
+    15.548056147
+    >>> rectangle_constant(0.0)
+    96.0
     """
-    r = relation("ducts", "entrance_laminar")
-    shape, (re,) = arrays.columns(reynolds=(reynolds, NONNEGATIVE))
-    r.use(reynolds=re)
-    n = r["power"]
-    total = np.power(np.full(1, r["creeping"]), n) + np.power(r["slope"] * re, n)
-    return shape(np.power(total, 1.0 / n))
+    shape, (a,) = arrays.columns(aspect_ratio=(aspect_ratio, _RATIO))
+    relation("ducts", "rectangle_constant").use(aspect_ratio=a)
+    return shape(_rectangle(a))
 
 
-def entrance_length_turbulent(reynolds: FloatLike) -> Any:
-    """Turbulent entrance length of the mean profile over the diameter, 4.4 Re^(1/6).
+def _rectangle(aspect: Floats) -> Floats:
+    r = relation("ducts", "rectangle_constant")
+    safe = np.maximum(aspect, 1e-3)  # below, every term of the deficit is exactly nothing
+    deficit = np.zeros(aspect.size)
+    for n in range(2 * _ODD_TERMS - 1, 0, -2):  # smallest first
+        weight = 2.0 / float(n**5)
+        deficit = deficit + weight / (np.exp(np.minimum(n * np.pi / safe, 600.0)) + 1.0)
+    inner = 1.0 - r["factor"] * aspect * (r["odd_sum"] - deficit)
+    return np.asarray(r["plates"] / (np.square(1.0 + aspect) * inner))
+
+
+def annulus_constant(radius_ratio: FloatLike) -> Any:
+    """Laminar Darcy friction factor times Reynolds number of a concentric annulus.
 
     Parameters
     ----------
-    reynolds : float or array
-        On the hydraulic diameter [-], positive.
+    radius_ratio : array_like
+        Inner over outer radius [1], 0 (limit of a vanishing wire: a pipe) to 1 (parallel plates).
 
     Returns
     -------
     float or ndarray
-        Entrance length over hydraulic diameter [-]; turbulence itself takes 40 to 60 diameters.
-
-    Warns
-    -----
-    RangeWarning
-        Outside Re 4e3 to 1e8.
+        f Re on the hydraulic diameter [1], 64 to 96.
 
     Raises
     ------
     InputError
-        If a value is not positive and finite.
+        If a value is not from 0 to 1.
+
+    Notes
+    -----
+    f Re = 64 (1 - r)^2/[1 + r^2 + (1 - r^2)/ln r]. With L = -ln r this is
+    64 (cosh L - 1)/(cosh L - sinh(L)/L), of which both parts have series of positive terms: nothing
+    cancels as r -> 1. Measured against 50 digits: 4 ulp.
 
     References
     ----------
-    common practice
+    shah-london-1978, jones-leung-1981
 
     Examples
     --------
-    >>> round(entrance_length_turbulent(1e6), 6)
-    44.0
+    >>> round(annulus_constant(0.5) / 4, 9)
+    23.812540159
+    >>> annulus_constant([0.0, 1.0])
+    array([64., 96.])
     """
-    r = relation("ducts", "entrance_turbulent")
-    shape, (re,) = arrays.columns(reynolds=(reynolds, POSITIVE))
-    r.use(reynolds=re)
-    return shape(r["factor"] * np.sqrt(np.cbrt(re)))
+    shape, (ratio,) = arrays.columns(radius_ratio=(radius_ratio, _RATIO))
+    relation("ducts", "annulus_constant").use(radius_ratio=ratio)
+    return shape(_annulus(ratio))
+
+
+def _annulus(ratio: Floats) -> Floats:
+    pipe_constant = relation("ducts", "friction_laminar")["pipe"]
+    log = -np.log(np.where(ratio > 0.0, ratio, 1.0))
+    square = np.square(np.minimum(log, _SERIES_UP_TO))
+    top, bottom, term = np.zeros(log.size), np.zeros(log.size), np.full(log.size, 0.5)
+    for n in range(1, _SERIES_TERMS + 1):
+        # L^(2n-2)/(2n)!, and the same times 2n/(2n+1)
+        top = top + term
+        bottom = bottom + term * (2 * n / (2 * n + 1))
+        term = term * square / ((2 * n + 1) * (2 * n + 2))
+    far = np.maximum(log, _SERIES_UP_TO)
+    r = np.minimum(ratio, np.exp(-_SERIES_UP_TO))
+    far_bottom = (1.0 + r * r) - (1.0 - r * r) / far
+    near = log < _SERIES_UP_TO
+    value = np.where(near, top, np.square(1.0 - r)) / np.where(near, bottom, far_bottom)
+    return pipe_constant * np.where(ratio > 0.0, value, 1.0)
+
+
+def jones_rectangle(aspect_ratio: FloatLike) -> Any:
+    """Laminar-equivalent over hydraulic diameter of a rectangular duct, approximation of Jones.
+
+    Parameters
+    ----------
+    aspect_ratio : array_like
+        Shorter over longer side [1], 0 to 1.
+
+    Returns
+    -------
+    float or ndarray
+        Shape factor [1], within 1.9 % of the exact 64/(f Re).
+
+    Raises
+    ------
+    InputError
+        If a value is not from 0 to 1.
+
+    Notes
+    -----
+    2/3 + (11/24) a (2 - a).
+
+    References
+    ----------
+    jones-1976
+
+    Examples
+    --------
+    >>> round(jones_rectangle(1.0), 6)
+    1.125
+    """
+    r = relation("ducts", "jones_rectangle")
+    shape, (a,) = arrays.columns(aspect_ratio=(aspect_ratio, _RATIO))
+    r.use(aspect_ratio=a)
+    return shape(r["plates"] + r["slope"] * a * (2.0 - a))

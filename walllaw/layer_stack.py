@@ -102,9 +102,10 @@ def layers(
     if len(given) != 3:
         accepted = f"exactly three of {', '.join(_NAMES)}"
         raise InputError("layers", ", ".join(given) or "nothing", accepted)
-    shape, flat = arrays.columns(
-        **{name: (value, _COUNT if name == "count" else POSITIVE) for name, value in given.items()}
-    )
+    checked: dict[str, Any] = {
+        name: (value, _COUNT if name == "count" else POSITIVE) for name, value in given.items()
+    }
+    shape, flat = arrays.columns(**checked)
     v = dict(zip(given, flat, strict=True))
     if "count" in v:
         refuse("count", v["count"], v["count"] != np.rint(v["count"]), "a whole number")

@@ -1,0 +1,1 @@
+"""The steps of an evaluation, in order: fluid, flow, closure, turbulence, scales, wall."""

@@ -1,0 +1,148 @@
+"""What a closure table must hold; every fault is one line with file, key and what is wrong."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Any
+
+from walllaw import tables
+from walllaw.errors import TableError, nearest
+
+STATUS = ("confirmed", "secondary", "memory", "unsure", "derived", "common practice")
+FAMILIES = (
+    "k-epsilon", "low-re-k-epsilon", "elliptic-relaxation", "k-omega", "k-tau", "one-equation",
+    "algebraic", "second-moment", "explicit-algebraic-stress", "transition", "heat",
+)
+VARIABLES = (
+    "k", "epsilon", "epsilon_tilde", "omega", "tau", "nu_tilde", "v2", "zeta", "f", "gamma",
+    "re_theta_t", "R", "reynolds_stresses", "laminar_k", "turbulent_k",
+)
+TREATMENTS = ("resolved", "wall-function", "blended")
+DECAY = ("k-epsilon", "k-omega", "k-tau", "none")
+_REQUIRED = ("name", "family", "variables", "source", "status", "summary", "evidence")
+_TOP = {
+    *_REQUIRED, "read_in", "base", "sigma_convention", "use", "misprints", "coefficients", "inner",
+    "outer", "alternatives", "functions", "algebra", "wall", "free_stream",
+}
+_ROW = {"value", "expression", "symbol", "source", "where", "status", "note", "read_in"}
+_TEXT = {"formula", "rule", "source", "where", "status", "note", "read_in"}
+
+
+def _fail(id_: str, key: str, fault: str) -> TableError:
+    return TableError(f"closure {id_}: {key}: {fault}")
+
+
+def _known(id_: str, key: str, value: object, accepted: tuple[str, ...]) -> None:
+    if value not in accepted:
+        near = nearest(str(value), accepted)
+        hint = f"; did you mean {near!r}?" if near else ""
+        raise _fail(id_, key, f"{value!r} is none of {', '.join(accepted)}{hint}")
+
+
+def _source(id_: str, key: str, value: object) -> None:
+    if value not in tables.sources():
+        raise _fail(id_, key, f"source {value!r} is not in the bibliography")
+
+
+def _keys(id_: str, key: str, row: object, accepted: set[str]) -> Mapping[str, Any]:
+    if not isinstance(row, dict):
+        raise _fail(id_, key, "must be a table")
+    for name in row:
+        if name not in accepted:
+            near = nearest(name, accepted)
+            raise _fail(id_, f"{key}.{name}" if key else name,
+                        "unknown key" + (f"; did you mean {near!r}?" if near else ""))
+    return row
+
+
+def _evidence(id_: str, key: str, row: Mapping[str, Any]) -> None:
+    if "status" in row:
+        _known(id_, f"{key}.status", row["status"], STATUS)
+    for name in ("source", "read_in"):
+        if name in row:
+            _source(id_, f"{key}.{name}", row[name])
+
+
+def _coefficients(id_: str, part: str, rows: object) -> None:
+    if not isinstance(rows, dict):
+        raise _fail(id_, part, "must be a table")
+    for name, row in rows.items():
+        key = f"{part}.{name}"
+        _keys(id_, key, row, _ROW)
+        if ("value" in row) == ("expression" in row):
+            raise _fail(id_, key, "needs either a value or an expression")
+        if not isinstance(row.get("value", row.get("expression")), str):
+            raise _fail(id_, key, "write the value as text, exactly as printed")
+        _evidence(id_, key, row)
+
+
+def _texts(id_: str, part: str, rows: object) -> None:
+    if not isinstance(rows, dict):
+        raise _fail(id_, part, "must be a table")
+    for name, row in rows.items():
+        _keys(id_, f"{part}.{name}", row, _TEXT)
+        if not ("formula" in row or "rule" in row):
+            raise _fail(id_, f"{part}.{name}", "needs a formula or a rule")
+        _evidence(id_, f"{part}.{name}", row)
+
+
+def _head(id_: str, raw: Mapping[str, Any]) -> None:
+    for name in _REQUIRED:
+        if name not in raw:
+            raise _fail(id_, name, "is missing")
+    for name in ("name", "summary", "evidence"):
+        if not isinstance(raw[name], str) or not raw[name].strip():
+            raise _fail(id_, name, "must be a text")
+    _known(id_, "family", raw["family"], FAMILIES)
+    _evidence(id_, "head", raw)
+    if not isinstance(raw["variables"], list):
+        raise _fail(id_, "variables", "must be a list of names")
+    for variable in raw["variables"]:
+        _known(id_, "variables", variable, VARIABLES)
+    if raw["family"] not in ("algebraic", "heat") and not raw["variables"]:
+        raise _fail(id_, "variables", "is empty")
+
+
+def _wall(id_: str, raw: Mapping[str, Any]) -> None:
+    wall = _keys(id_, "wall", raw.get("wall", {}), {"treatments", "y_plus_max", "conditions", "rough"})
+    if raw["family"] != "heat" and not wall.get("treatments"):
+        raise _fail(id_, "wall.treatments", "is missing")
+    for treatment in wall.get("treatments", []):
+        _known(id_, "wall.treatments", treatment, TREATMENTS)
+    for part in ("conditions", "rough"):
+        _texts(id_, f"wall.{part}", wall.get(part, {}))
+
+
+def _free_stream(id_: str, raw: Mapping[str, Any]) -> None:
+    if "free_stream" not in raw:
+        raise _fail(id_, "free_stream", "is missing")
+    part = _keys(id_, "free_stream", raw["free_stream"], {"decay", "decay_set", "note", "recommendations"})
+    _known(id_, "free_stream.decay", part.get("decay"), DECAY)
+    for row in part.get("recommendations", []):
+        _keys(id_, "free_stream.recommendations", row, {"quantity", *_TEXT})
+        for name in ("quantity", "formula", "source", "status"):
+            if name not in row:
+                raise _fail(id_, f"free_stream.recommendations.{name}", "is missing")
+        _evidence(id_, "free_stream.recommendations", row)
+
+
+def check_closure(id_: str, raw: Mapping[str, Any]) -> None:
+    """Check the content of a closure table.
+
+    Raises
+    ------
+    TableError
+        At the first fault.
+    """
+    _keys(id_, "", raw, _TOP)
+    _head(id_, raw)
+    for part in ("coefficients", "inner", "outer", "alternatives"):
+        _coefficients(id_, part, raw.get(part, {}))
+    if not (raw.get("coefficients") or raw.get("inner") or "base" in raw):
+        raise _fail(id_, "coefficients", "is missing")
+    _texts(id_, "functions", raw.get("functions", {}))
+    algebra = _keys(id_, "algebra", raw.get("algebra", {}), {"C_mu", "note"})
+    if raw["family"] != "heat" and "base" not in raw and not isinstance(algebra.get("C_mu"), str):
+        raise _fail(id_, "algebra.C_mu", "is missing (a coefficient's name, or a value as text)")
+    _wall(id_, raw)
+    _free_stream(id_, raw)
