@@ -20,11 +20,12 @@ from walllaw.exact import Number, evaluate
 class Coefficient:
     """One coefficient with its source.
 
-    ``exact`` is the value before its one rounding to double precision.
+    ``printed`` is the text of the table, ``exact`` its value before the one rounding to double.
     """
 
     value: float
     exact: Number
+    printed: str
     source: str
     status: str
     symbol: str = ""
@@ -96,6 +97,7 @@ def _rows(
         found[f"{prefix}{name}"] = Coefficient(
             value=float(exact),
             exact=exact,
+            printed=text,
             source=row.get("source", head["source"]),
             status=row.get("status", "derived" if "expression" in row else head["status"]),
             read_in=row.get("read_in", head.get("read_in", "")),

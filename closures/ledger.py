@@ -70,7 +70,7 @@ class Ledger:
     def is_label(self, path: str, name: str) -> Mask:
         """Return the rows whose label has a name."""
         codes, names = self.labels[path]
-        return codes == names.index(name)
+        return codes == (names.index(name) if name in names else -1)
 
     def cite(self, key: str) -> None:
         """Note a source of the bibliography."""

@@ -97,9 +97,19 @@ def text(sheet: Sheet) -> str:
             for row in _rows(sheet[part], part):
                 lines += _line(*row)
     lines += _listing("Assumptions", sheet["assumptions"])
+    lines += _listing("Ranges of the relations used", _ranges(sheet))
     lines += _listing("Sources", [f"{s['key']}: {s['citation']}" for s in sheet["sources"]])
     lines += _listing("Cautions", sheet["cautions"])
     return "\n".join(lines) + "\n"
+
+
+def _ranges(sheet: Sheet) -> list[str]:
+    return [
+        f"{r['title']}: "
+        + ", ".join(f"{n} {low:g} to {high:g}" for n, (low, high) in r["range"].items())
+        + f"  [{r['source']}, {r['status']}]"
+        for r in sheet["relations"]
+    ]
 
 
 def _listing(heading: str, items: Iterable[str]) -> list[str]:
@@ -138,6 +148,7 @@ def markdown(sheet: Sheet) -> str:
             lines.append("| " + " | ".join(cells if value else [f"**{cells[0]}**", "", "", ""]) + " |")
     for heading, items in (
         ("Assumptions", sheet["assumptions"]),
+        ("Ranges of the relations used", _ranges(sheet)),
         ("Sources", [f"`{s['key']}`: {s['citation']}" for s in sheet["sources"]]),
         ("Cautions", sheet["cautions"]),
     ):

@@ -85,6 +85,20 @@ def sheet_schema() -> dict[str, Any]:
         "type": "object", "properties": {"key": text, "citation": text},
         "required": ["key", "citation"], "additionalProperties": False,
     }
+    relation = {
+        "type": "object",
+        "properties": {
+            **dict.fromkeys(("id", "title", "formula", "source", "status"), text),
+            "range": {
+                "type": "object",
+                "additionalProperties": {
+                    "type": "array", "items": {"type": "number"}, "minItems": 2, "maxItems": 2,
+                },
+            },
+        },
+        "required": ["id", "title", "formula", "source", "status", "range"],
+        "additionalProperties": False,
+    }
     closure = {n: text for n in ("id", "name", "family", "source")}
     return {
         "$schema": DRAFT,
@@ -99,6 +113,7 @@ def sheet_schema() -> dict[str, Any]:
             **dict.fromkeys(PARTS, part),
             "findings": {"type": "array", "items": finding},
             "assumptions": {"type": "array", "items": text},
+            "relations": {"type": "array", "items": relation},
             "sources": {"type": "array", "items": source},
             "cautions": {"type": "array", "items": text, "minItems": 1},
             "units": {"type": "object", "additionalProperties": text},

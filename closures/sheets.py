@@ -88,6 +88,7 @@ def make_sheet(ledger: Ledger, row: int = 0) -> Sheet:
     keys = dict.fromkeys([*ledger.sources, *(f.source for f in findings)])
     data["findings"] = [finding.as_dict() for finding in findings]
     data["assumptions"] = list(ledger.notes)
+    data["relations"] = _relations(ledger)
     data["sources"] = [
         {"key": key, "citation": citations.citation(key)}
         for key in keys
@@ -96,6 +97,23 @@ def make_sheet(ledger: Ledger, row: int = 0) -> Sheet:
     data["cautions"] = list(CAUTIONS)
     data["units"] = units
     return Sheet(data, findings)
+
+
+def _relations(ledger: Ledger) -> list[dict[str, Any]]:
+    """Return every relation that has a stated range and went into the sheet, each once."""
+    used = {e.relation.id: e.relation for e in ledger.entries.values() if e.relation}
+    return [
+        {
+            "id": r.id,
+            "title": r.title,
+            "formula": r.formula,
+            "source": r.source,
+            "status": r.status,
+            "range": {name: list(limits) for name, limits in r.valid.items()},
+        }
+        for r in used.values()
+        if r.valid
+    ]
 
 
 def unit_of(path: str) -> str:

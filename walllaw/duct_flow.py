@@ -81,7 +81,7 @@ def entrance_length_laminar(reynolds: FloatLike) -> Any:
     Examples
     --------
     >>> round(entrance_length_laminar(1000.0), 2)
-    56.72
+    56.73
     """
     return _durst("entrance_laminar", reynolds)
 

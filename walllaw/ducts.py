@@ -158,7 +158,7 @@ def rectangle(width: FloatLike, height: FloatLike) -> Passage:
 
     Examples
     --------
-    >>> round(rectangle(0.1, 0.1).laminar_constant, 9)
+    >>> round(rectangle(0.1, 0.1).laminar_constant, 8)
     56.90830754
     """
     shape, (w, h) = arrays.columns(width=(width, POSITIVE), height=(height, POSITIVE))

@@ -37,8 +37,8 @@ def add_log10(x: Floats, slope: float, y: Floats) -> Floats:
 
     Examples
     --------
-    >>> round(float(add_log10(np.array([-2.0]), 2.0, np.array([10.0]))[0]), 14)
-    0.0
+    >>> round(float(add_log10(np.array([3.0]), 2.0, np.array([0.1]))[0]), 12)
+    1.0
     """
     head, tail = _octave(slope)
     m, k = np.frexp(y)

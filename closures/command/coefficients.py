@@ -54,7 +54,8 @@ def list_(family: str | None, form: str, output: str) -> int:
     elif form == "markdown":
         lines = [f"| {' | '.join(columns)} |", "|---|---|---|---|---|", *(f"| {' | '.join(r)} |" for r in rows)]
     else:
-        lines = [f"{i:<31}{f:<26}{v[:22]}".rstrip() for i, f, v, _, _ in rows]
+        short = [(i, f, v.replace("reynolds_stresses", "stresses")) for i, f, v, _, _ in rows]
+        lines = [f"{i:<31}{f:<26}{v}".rstrip() for i, f, v in short]
     emit("\n".join(lines), output)
     return 0
 
@@ -74,7 +75,7 @@ def show(name: str, form: str, output: str) -> int:
 
 def _coefficient_rows(c: Closure) -> list[tuple[str, str, str, str, str]]:
     return [
-        (n, f"{k.value:.9g}", k.expression or str(k.exact), k.status, k.note)
+        (n, f"{k.value:.9g}", k.printed, k.status, k.note)
         for n, k in c.coefficients.items()
     ]
 

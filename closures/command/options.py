@@ -35,12 +35,13 @@ def case_options(*tables: str) -> Decorator:
             table, _, name = path.partition(".")
             if table not in tables:
                 continue
-            flag = f"--{name.replace('_', '-')}"
+            word = table if name == "name" else name  # --fluid water, not --name water
+            flag, parameter = f"--{word.replace('_', '-')}", path.replace(".", "__")
             if key.kind == "flag":
-                option = click.option(flag, path, is_flag=True, default=None, help=key.help)
+                option = click.option(flag, parameter, is_flag=True, default=None, help=key.help)
             else:
                 metavar = "|".join(key.choices) or key.kind.upper()
-                option = click.option(flag, path, metavar=metavar, help=key.help)
+                option = click.option(flag, parameter, metavar=metavar, help=key.help)
             function = option(function)
         return function
 
@@ -50,9 +51,10 @@ def case_options(*tables: str) -> Decorator:
 def raw_case(values: dict[str, Any]) -> dict[str, Any]:
     """Turn the options that were given into the nested mapping of a case file."""
     raw: dict[str, Any] = {}
-    for path, value in values.items():
+    for parameter, value in values.items():
         if value is None:
             continue
+        path = parameter.replace("__", ".")
         table, _, name = path.partition(".")
         if keys()[path].kind == "count":
             value = int(value) if str(value).isdigit() else value

@@ -27,21 +27,20 @@ def regime_transitional(e: Ledger) -> Iterator[Hit]:
 
 
 def correlation_range(e: Ledger) -> Iterator[Hit]:
-    """A correlation is used outside the range its source states."""
+    """A correlation is used outside the range its source states (each input of it once)."""
+    seen = set()
     for path, source_path, rel, rows in e.outside():
-        name = next(n for n, p in rel_inputs(e, path).items() if p == source_path)
+        name = next(n for n, p in e.entries[path].inputs.items() if p == source_path)
+        if (rel.id, name) in seen:
+            continue
+        seen.add((rel.id, name))
         low, high = rel.valid[name]
         yield Hit(
             rows,
             source_path,
             None,
-            {"title": rel.title, "result": path, "low": low, "high": high, "key": rel.source},
+            {"title": rel.title, "name": name, "low": low, "high": high, "key": rel.source},
         )
-
-
-def rel_inputs(e: Ledger, path: str) -> dict[str, str]:
-    """Return the inputs of the relation behind an entry."""
-    return dict(e.entries[path].inputs)
 
 
 def compressible(e: Ledger) -> Iterator[Hit]:

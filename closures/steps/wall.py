@@ -24,6 +24,7 @@ def wall_step(inputs: Inputs, ledger: Ledger, c: Closure) -> None:
     treatment = inputs.text("wall.treatment", c.treatments[0])
     ledger.texts["wall.treatment"] = treatment
     ledger.texts["closure.treatments"] = ", ".join(c.treatments)
+    pair = _pair(inputs)
     stack = _stack_without_first(inputs)
     _first_cell(inputs, ledger, c, treatment, stack)
     _layers(inputs, ledger, stack)
@@ -36,7 +37,7 @@ def wall_step(inputs: Inputs, ledger: Ledger, c: Closure) -> None:
                    friction_velocity="flow.friction_velocity",
                    kinematic_viscosity="fluid.kinematic_viscosity")
     if treatment == "wall-function":
-        _wall_function(inputs, ledger, c)
+        _wall_function(ledger, c, pair)
     else:
         _resolved(ledger, c, treatment)
 
@@ -134,20 +135,18 @@ def _window(ledger: Ledger, c: Closure, treatment: str) -> None:
     ledger.put("wall.y_plus_high", high, rel, re_tau="flow.re_tau")
 
 
-def _pair(inputs: Inputs, ledger: Ledger) -> LogLawPair:
+def _pair(inputs: Inputs) -> LogLawPair:
     try:
-        pair = log_law_pair(inputs.text("wall.log_law", _DEFAULT_PAIR))
+        return log_law_pair(inputs.text("wall.log_law", _DEFAULT_PAIR))
     except InputError as error:
         raise InputError("wall.log_law", error.given, error.accepted, error.hint) from None
+
+
+def _wall_function(ledger: Ledger, c: Closure, pair: LogLawPair) -> None:
     ledger.notes.append(
         f"log law {pair.name}: kappa = {pair.kappa:g}, B = {pair.B:.4g}, E = {pair.E:.4g} ({pair.source})"
     )
     ledger.cite(pair.source)
-    return pair
-
-
-def _wall_function(inputs: Inputs, ledger: Ledger, c: Closure) -> None:
-    pair = _pair(inputs, ledger)
     y_plus, u_tau = ledger["wall.y_plus"], ledger["flow.friction_velocity"]
     y, nu = ledger["wall.first_cell_centre"], ledger["fluid.kinematic_viscosity"]
     crossing = np.array([wall_function.intersection(pair.kappa, pair.B)])

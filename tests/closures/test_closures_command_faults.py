@@ -133,7 +133,7 @@ def test_the_good_case_is_good(tmp_path, capsys):
         (["inlet", "--closure", "sst2"], "closure"),
         (["coefficients", "show", "menter-sst-203"], "did you mean 'menter-sst-2003'"),
         (["coefficients", "shw", "sst"], "shw"),
-        (["wall", "--kind", "pipe"], "flow.diameter"),
+        (["wall", "--fluid", "air", "--kind", "pipe"], "flow.diameter"),
         (["nonsense"], "command"),
     ],
     ids=lambda value: " ".join(value) if isinstance(value, list) else None,
