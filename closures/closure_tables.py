@@ -16,7 +16,7 @@ from walllaw.errors import InputError, TableError
 from walllaw.exact import Number, evaluate
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False)
 class Coefficient:
     """One coefficient with its source.
 
@@ -38,7 +38,7 @@ class Coefficient:
 Coefficients = Mapping[str, Coefficient]
 
 
-@dataclass(frozen=True, slots=True, repr=False)
+@dataclass(frozen=True, slots=True, eq=False, repr=False)
 class Closure:
     """One closure; index it for a coefficient: ``c["beta_star"]``, ``c["outer.beta"]``."""
 

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import os
 import sys
-import tempfile
 
 from walllaw.errors import InputError
 
@@ -17,6 +16,8 @@ def write_file(path: str, content: str) -> None:
     InputError
         If the folder cannot be written; the old file, if any, is left as it was.
     """
+    import tempfile  # only when a file is written: it costs 3 ms
+
     folder = os.path.dirname(os.path.abspath(path))
     temporary = ""
     try:

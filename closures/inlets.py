@@ -97,7 +97,7 @@ def viscosity_variable(c: Closure, ratio: Floats) -> Floats:
     return eddy_viscosity.menter_1997_chi(ratio, c["A_plus"], c["kappa"])
 
 
-@dataclass(frozen=True, slots=True, repr=False)
+@dataclass(frozen=True, slots=True, eq=False, repr=False)
 class Inlet:
     """Inlet values of one closure; the closure's own variables are in ``set``.
 

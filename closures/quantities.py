@@ -16,7 +16,7 @@ if TYPE_CHECKING:
 _KEYS = {"words", "symbol", "unit", "monomial", "source", "low", "high", "open_low"}
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False)
 class Quantity:
     """One quantity of ``tables/quantities.toml``."""
 

@@ -98,7 +98,7 @@ def plan(wanted: str, first: str, second: str) -> Factors:
     return tuple((base, power) for base, power in factors.items() if power)
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False, repr=False)
 class _Term:
     """Bases that share an exponent: (product of above / product of below)**(power/root)."""
 
@@ -206,7 +206,7 @@ def _numbers() -> dict[str, Floats]:
     return {base: np.array([float(Fraction(base))]) for base in bases}
 
 
-@dataclass(frozen=True, slots=True, repr=False)
+@dataclass(frozen=True, slots=True, eq=False, repr=False)
 class State:
     """A state of turbulence; every quantity is an attribute, in SI units.
 

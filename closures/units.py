@@ -17,7 +17,7 @@ from walllaw import tables
 from walllaw.errors import InputError, nearest
 
 _TEXT = re.compile(r"\s*([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)\s*(.*?)\s*", re.ASCII)
-_TOKEN = re.compile(r"([A-Za-zµμ°%][A-Za-zµμ°0-9_]*?)(?:\^|\*\*)?(-?[0-9])?(?=[\s.*·/()]|$)|(/)|([.*·\s]+)|([()])")
+_TOKEN = r"([A-Za-zµμ°%][A-Za-zµμ°0-9_]*?)(?:\^|\*\*)?(-?[0-9])?(?=[\s.*·/()]|$)|(/)|([.*·\s]+)|([()])"  # compiled on first use: most quick commands have no unit
 _MAX_TEXT, _MAX_UNIT, _MAX_FACTORS = 80, 40, 8
 _TEMPERATURES = {"degC", "°C", "celsius", "degF", "°F", "fahrenheit", "degree_Celsius", "degree_Fahrenheit"}
 _GAUGE = {"psig", "barg", "bar_g", "Pag", "kPag"}
@@ -82,9 +82,10 @@ def _single(name: str) -> tuple[float, Dimension] | None:
 
 def _factors(unit: str) -> Iterator[tuple[str, int]]:
     """Take a unit apart into (name, exponent); raises ValueError for anything but a plain product."""
+    token = re.compile(_TOKEN)
     position, sign, depth, expect = 0, 1, 0, True
     while position < len(unit):
-        match = _TOKEN.match(unit, position)
+        match = token.match(unit, position)
         if match is None:
             raise ValueError(unit[position:])
         name, power, slash, _, bracket = match.groups()

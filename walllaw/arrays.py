@@ -6,6 +6,7 @@ the same bits. Work is done in blocks that fit the processor's cache.
 
 from __future__ import annotations
 
+import sys
 from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Any
@@ -22,7 +23,7 @@ Result = float | Floats
 BLOCK = 16384  # points; 8k to 64k perform alike, shorter and longer blocks lose
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False, repr=False)
 class Interval:
     """The values an argument may take."""
 
@@ -65,7 +66,8 @@ INTERCEPT = Interval(-100.0, 100.0)
 
 
 def _convert(name: str, value: FloatLike) -> Floats:
-    if np.ma.isMaskedArray(value):
+    # importing numpy.ma costs 8 ms; without it nobody can hold a masked array
+    if "numpy.ma" in sys.modules and np.ma.isMaskedArray(value):
         raise InputError(name, "a masked array", "plain numbers")
     try:
         raw = np.asarray(value)
@@ -112,7 +114,7 @@ def check(name: str, value: FloatLike, interval: Interval = FINITE) -> Floats:
     return values
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False, repr=False)
 class Shape:
     """How a result goes back to the shape its arguments had."""
 

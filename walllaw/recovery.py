@@ -1,4 +1,4 @@
-"""Recovery temperature and viscosity of air; public names are reached as ``walllaw.compressible``."""
+"""Recovery temperature and viscosity of air; reached by users as ``walllaw.compressible``."""
 
 from __future__ import annotations
 

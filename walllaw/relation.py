@@ -28,7 +28,7 @@ STATUS = ("confirmed", "secondary", "memory", "unsure", "derived", "common pract
 _KEYS = {"title", "formula", "unit", "source", "where", "status", "note", "coefficients", "valid"}
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False)
 class Relation:
     """A published relation; index it for a coefficient (``r["slope"]``)."""
 
@@ -78,7 +78,7 @@ class Relation:
                 )
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False)
 class Use:
     """One use of a relation, with the inputs it was given."""
 

@@ -11,16 +11,17 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import KAPPA, NONNEGATIVE, POSITIVE, FloatLike, Floats
+from walllaw.arrays import KAPPA, NONNEGATIVE, POSITIVE, FloatLike, Floats, Interval
 from walllaw.errors import unknown_name
 from walllaw.relation import Relation, relation
 
+_WALL_UNITS = Interval(1e-100)  # above 0, and its square a double
 _FORMS = ("k_omega", "low_re_k_omega", "stress_omega", "low_re_stress_omega")
 
 
 def _two_powers(c: Relation, ks: Floats, limited: Floats) -> Floats:
     ratio = c["low"] / limited
-    return np.where(ks < c["switch"], ratio * ratio, c["high"] / ks)
+    return np.where(ks < c["switch"], ratio * ratio, c["high"] / limited)
 
 
 def omega_wilcox_1988(roughness_plus: FloatLike) -> Any:
@@ -56,10 +57,9 @@ def omega_wilcox_1988(roughness_plus: FloatLike) -> Any:
     array([100.,   1.])
     """
     c = relation("roughness", "omega_wilcox_1988")
-    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, POSITIVE))
+    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, _WALL_UNITS))
     c.use(roughness_plus=ks)
-    # below 1e-100 the square would overflow; no wall is that smooth
-    return shape(_two_powers(c, ks, np.maximum(ks, 1e-100)))
+    return shape(_two_powers(c, ks, ks))
 
 
 def omega_hellsten(roughness_plus: FloatLike, y_plus: FloatLike) -> Any:
@@ -98,13 +98,11 @@ def omega_hellsten(roughness_plus: FloatLike, y_plus: FloatLike) -> Any:
     """
     c = relation("roughness", "omega_hellsten")
     shape, (ks, yp) = arrays.columns(
-        roughness_plus=(roughness_plus, NONNEGATIVE), y_plus=(y_plus, POSITIVE)
+        roughness_plus=(roughness_plus, NONNEGATIVE), y_plus=(y_plus, _WALL_UNITS)
     )
     c.use(roughness_plus=ks, y_plus=yp)
-    least = np.minimum(c["factor"] * np.power(np.maximum(yp, 1e-100), c["exponent"]), c["limit"])
-    limited = np.maximum(ks, least)
-    ratio = c["low"] / limited
-    return shape(np.where(ks < c["switch"], ratio * ratio, c["high"] / limited))
+    least = np.minimum(c["factor"] * np.power(yp, c["exponent"]), c["limit"])
+    return shape(_two_powers(c, ks, np.maximum(ks, least)))
 
 
 def omega_wilcox_2006(roughness_plus: FloatLike, form: str = "k_omega") -> Any:
@@ -144,9 +142,9 @@ def omega_wilcox_2006(roughness_plus: FloatLike, form: str = "k_omega") -> Any:
     if form not in _FORMS:
         raise unknown_name("form", form, _FORMS)
     c = relation("roughness", "omega_wilcox_2006")
-    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, POSITIVE))
+    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, _WALL_UNITS))
     c.use(roughness_plus=ks)
-    ratio = c["low"] / np.maximum(ks, 1e-100)
+    ratio = c["low"] / ks
     square = ratio * ratio
     rough = c[form] / np.maximum(ks, c["switch"])
     fade = np.exp(np.minimum(c["switch"] - ks, 0.0))
@@ -334,16 +332,16 @@ def knopp_omega_wall(
     c = relation("roughness", "knopp_omega")
     shape, (ks, yp, kap, bs, b) = arrays.columns(
         roughness_plus=(roughness_plus, NONNEGATIVE),
-        y_plus=(y_plus, POSITIVE),
+        y_plus=(y_plus, _WALL_UNITS),
         kappa=(kappa, KAPPA),
         beta_star=(beta_star, POSITIVE),
         beta=(beta, POSITIVE),
     )
     c.use(roughness_plus=ks, y_plus=yp)
     displacement = ks * _knopp_share(relation("roughness", "knopp_displacement"), ks)
-    # a vanishing displacement leaves the smooth value; 1e-200 only keeps the quotient finite
-    rough = 1.0 / (np.sqrt(bs) * kap * np.maximum(displacement, 1e-200))
-    smooth = c["smooth_factor"] / (b * np.square(np.maximum(yp, 1e-100)))
+    # a vanishing displacement leaves the smooth value; 1e-300 only keeps the quotient finite
+    rough = 1.0 / (np.sqrt(bs) * kap * np.maximum(displacement, 1e-300))
+    smooth = c["smooth_factor"] / (b * np.square(yp))
     return shape(np.minimum(rough, smooth))
 
 

@@ -2,9 +2,6 @@
 
 from __future__ import annotations
 
-import csv
-import io
-import json
 from typing import TYPE_CHECKING, Any
 
 import click
@@ -111,6 +108,8 @@ def _record(inlet: Inlet) -> dict[str, Any]:
 
 
 def _json(found: list[Inlet]) -> str:
+    import json
+
     rows = [_record(i) for i in found]
     return json.dumps(rows[0] if len(rows) == 1 else rows, indent=2, allow_nan=False)
 
@@ -145,6 +144,9 @@ def _text(found: list[Inlet]) -> str:
 
 
 def _csv(found: list[Inlet]) -> str:
+    import csv
+    import io
+
     buffer = io.StringIO()
     writer = csv.writer(buffer, lineterminator="\n")
     writer.writerow(["closure", "quantity", "value", "unit"])

@@ -1,4 +1,4 @@
-"""Options shared by the sub-commands; those of a case come from ``tables/case.toml``."""
+"""Options that every sub-command shares: form and place of the output."""
 
 from __future__ import annotations
 
@@ -6,8 +6,6 @@ from collections.abc import Callable
 from typing import Any
 
 import click
-
-from closures.case import keys
 
 Decorator = Callable[[Callable[..., Any]], Callable[..., Any]]
 
@@ -25,38 +23,3 @@ def output_options(*formats: str) -> Decorator:
         )(function)
 
     return decorate
-
-
-def case_options(*tables: str) -> Decorator:
-    """Add one option for every key of the named tables of a case file."""
-
-    def decorate(function: Callable[..., Any]) -> Callable[..., Any]:
-        for path, key in reversed(keys().items()):
-            table, _, name = path.partition(".")
-            if table not in tables:
-                continue
-            word = table if name == "name" else name  # --fluid water, not --name water
-            flag, parameter = f"--{word.replace('_', '-')}", path.replace(".", "__")
-            if key.kind == "flag":
-                option = click.option(flag, parameter, is_flag=True, default=None, help=key.help)
-            else:
-                metavar = "|".join(key.choices) or key.kind.upper()
-                option = click.option(flag, parameter, metavar=metavar, help=key.help)
-            function = option(function)
-        return function
-
-    return decorate
-
-
-def raw_case(values: dict[str, Any]) -> dict[str, Any]:
-    """Turn the options that were given into the nested mapping of a case file."""
-    raw: dict[str, Any] = {}
-    for parameter, value in values.items():
-        if value is None:
-            continue
-        path = parameter.replace("__", ".")
-        table, _, name = path.partition(".")
-        if keys()[path].kind == "count":
-            value = int(value) if str(value).isdigit() else value
-        raw.setdefault(table, {})[name] = value
-    return raw

@@ -7,7 +7,8 @@ from typing import Any
 
 import click
 
-from closures.command.options import case_options, output_options, raw_case
+from closures.command.case_options import case_options, raw_case
+from closures.command.options import output_options
 
 
 @click.command()
