@@ -44,8 +44,8 @@ _HOMES = {
 __all__ = [
     "Closure",
     "Fluid",
-    "InputError",
     "Inlet",
+    "InputError",
     "Ledger",
     "RangeWarning",
     "Sheet",

@@ -58,13 +58,12 @@ class Key:
 def keys() -> dict[str, Key]:
     """Return every key of a case file by its path (``flow.diameter``)."""
     rows = tables.read("case.toml")["keys"]
-    return {
-        path: Key(
-            path=path,
-            **{k: tuple(v) if isinstance(v, list) else v for k, v in row.items()},
-        )
-        for path, row in rows.items()
-    }
+    return {path: _key(path, row) for path, row in rows.items()}
+
+
+def _key(path: str, row: dict[str, Any]) -> Key:
+    fields: dict[str, Any] = {k: tuple(v) if isinstance(v, list) else v for k, v in row.items()}
+    return Key(path=path, **fields)
 
 
 @dataclass(frozen=True, slots=True)
@@ -97,7 +96,7 @@ def _number(key: Key, value: object) -> float:
     from closures.units import quantity as in_si
 
     q = quantity(key.quantity)
-    number = in_si(value, q.unit, key.path)  # type: ignore[arg-type]
+    number = in_si(value, q.unit, key.path)
     if q.name == "intensity" and number > q.high:
         raise InputError(key.path, f"{value!r}", "a fraction above 0 and up to 1", _percent(value))
     low = number <= q.low if q.open_low else number < q.low
@@ -115,7 +114,7 @@ def _length(key: Key, value: object) -> Value:
     if not isinstance(value, dict):
         return _number(key, value)
     if set(value) != {"times", "of"}:
-        raise InputError(key.path, repr(value), "a length, or { times = 0.07, of = \"diameter\" }")
+        raise InputError(key.path, repr(value), 'a length, or { times = 0.07, of = "diameter" }')
     times, of = value["times"], value["of"]
     if isinstance(times, bool) or not isinstance(times, (int, float)) or not 0 < times <= 1e3:
         raise InputError(f"{key.path}.times", repr(times), "a number above 0 to 1000")
@@ -267,5 +266,3 @@ def read_case(source: str | os.PathLike[str] | Mapping[str, Any]) -> Case:
         reason = getattr(error, "strerror", None) or str(error)
         raise InputError(name, f"no readable file ({reason})", "a case file") from None
     return case_from(load(content, "standard input" if name == "-" else name))
-
-

@@ -131,8 +131,18 @@ def build(id_: str, raw: Mapping[str, Any]) -> Closure:
             coefficients |= _rows(_ordered(raw[part]), raw, dict(known), f"{part}.", id_)
     numbers = {name: c.exact for name, c in coefficients.items() if "." not in name}
     algebra = raw.get("algebra") or (inherited.algebra if inherited else {})
-    fields = ("name", "family", "source", "status", "summary", "evidence", "base", "read_in",
-              "sigma_convention", "use")
+    fields = (
+        "name",
+        "family",
+        "source",
+        "status",
+        "summary",
+        "evidence",
+        "base",
+        "read_in",
+        "sigma_convention",
+        "use",
+    )
     wall = raw.get("wall", {})
     return Closure(
         id=id_,

@@ -25,11 +25,11 @@ def spalart_allmaras_ratio(chi: Floats, c_v1: float) -> Floats:
     inverse = 1.0 / np.maximum(s, 1.0)
     low = small * small * small
     high = inverse * inverse * inverse
-    return np.where(s < 1.0, chi * (low / (1.0 + low)), chi / (1.0 + high))
+    return np.asarray(np.where(s < 1.0, chi * (low / (1.0 + low)), chi / (1.0 + high)))
 
 
 def spalart_allmaras_chi(ratio: Floats, c_v1: float) -> Floats:
-    """Return chi = nu_tilde/nu for a given nu_t/nu, the positive root of chi^4 - r chi^3 = r c_v1^3.
+    """Return chi = nu_tilde/nu for a given nu_t/nu = r: the root of chi^4 - r chi^3 = r c_v1^3.
 
     Notes
     -----
@@ -45,7 +45,7 @@ def spalart_allmaras_chi(ratio: Floats, c_v1: float) -> Floats:
         # f/f' with s^3 divided out of both, so that tiny q does not underflow
         s = s - (s - near - near / cube) / (4.0 - 3.0 * near / s)
     inverse = 1.0 / np.maximum(q, 1.0)
-    return c_v1 * np.where(q < _LARGE, s, q + inverse * inverse)
+    return np.asarray(c_v1 * np.where(q < _LARGE, s, q + inverse * inverse))
 
 
 def menter_1997_ratio(chi: Floats, A_plus: float, kappa: float) -> Floats:

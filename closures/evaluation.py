@@ -5,6 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 from typing import Any
 
+import numpy as np
+
 from closures.case import Case, read_case
 from closures.closure_tables import Closure, closure
 from closures.inputs import Inputs
@@ -16,8 +18,6 @@ from closures.steps.turbulence import turbulence_step
 from closures.steps.wall import wall_step
 from walllaw.errors import InputError
 from walllaw.relation import record
-
-import numpy as np
 
 
 def chosen_closure(inputs: Inputs) -> Closure:
@@ -102,6 +102,6 @@ def sheet(source: Any) -> Sheet:
     ...     "velocity": 40.0, "tripped": True}, "turbulence": {"viscosity_ratio": 1.0},
     ...     "closure": {"name": "sa"}})
     >>> round(s["inlet"]["set"]["nu_tilde"], 9)
-    6.7564e-05
+    6.7527e-05
     """
     return make_sheet(evaluate(read_case(source)))

@@ -1,4 +1,4 @@
-"""Fluids: air and water built in, any fluid of the property library by name, or given properties."""
+"""Fluids: air and water built in, others of the property library by name, or given properties."""
 
 from __future__ import annotations
 
@@ -71,14 +71,21 @@ def _water(shape: Shape, t: Floats, p: Floats) -> Fluid:
     if boiling.any():
         i = int(np.argmax(boiling))
         raise InputError(
-            "fluid", f"water at {t[i]:.6g} K and {p[min(i, p.size - 1)]:.6g} Pa, which is steam",
-            "liquid water", "name the fluid 'Water' of the property library for steam",
+            "fluid",
+            f"water at {t[i]:.6g} K and {p[min(i, p.size - 1)]:.6g} Pa, which is steam",
+            "liquid water",
+            "name the fluid 'Water' of the property library for steam",
         )
     rho = water.density(t, p)
     mu = water.viscosity(t, rho)
     names = ("water_density", "water_compressibility", "water_viscosity")
     return Fluid(
-        "water", shape(t), shape(p), shape(rho), shape(mu), shape(mu / rho),
+        "water",
+        shape(t),
+        shape(p),
+        shape(rho),
+        shape(mu),
+        shape(mu / rho),
         relations=tuple(relation("fluids", n) for n in names),
     )
 
@@ -91,7 +98,10 @@ def _library(name: str, shape: Shape, t: Floats, p: Floats) -> Fluid:
         near = nearest(name, ["air", "water", "humid air", *known])
         hint = f"did you mean {near!r}?" if near else ""
         raise InputError(
-            "fluid.name", repr(name), "air, water, humid air, or a fluid of the property library", hint
+            "fluid.name",
+            repr(name),
+            "air, water, humid air, or a fluid of the property library",
+            hint,
         )
 
     def get(key: str) -> Any:
@@ -99,16 +109,25 @@ def _library(name: str, shape: Shape, t: Floats, p: Floats) -> Fluid:
 
     keys = {
         "density": "DMASS", "dynamic_viscosity": "VISCOSITY", "specific_heat": "CPMASS",
-        "thermal_conductivity": "CONDUCTIVITY", "prandtl": "PRANDTL", "speed_of_sound": "SPEED_OF_SOUND",
+        "thermal_conductivity": "CONDUCTIVITY", "prandtl": "PRANDTL",
+        "speed_of_sound": "SPEED_OF_SOUND",
     }  # fmt: skip
     try:
         found = {n: get(k) for n, k in keys.items()}
     except ValueError as error:
         reason = str(error).split(" : ")[0].replace("\n", " ")[:160]
-        raise InputError("fluid", f"{name} at this state", "a state the library covers", reason) from None
+        raise InputError(
+            "fluid", f"{name} at this state", "a state the library covers", reason
+        ) from None
     nu = shape(np.atleast_1d(found["dynamic_viscosity"]) / np.atleast_1d(found["density"]))
-    return Fluid(name, shape(t), shape(p), kinematic_viscosity=nu, **found,
-                 relations=(relation("fluids", "library"),))
+    return Fluid(
+        name,
+        shape(t),
+        shape(p),
+        kinematic_viscosity=nu,
+        **found,
+        relations=(relation("fluids", "library"),),
+    )
 
 
 def _humid_air(shape: Shape, t: Floats, p: Floats, humidity: Floats) -> Fluid:
@@ -120,20 +139,33 @@ def _humid_air(shape: Shape, t: Floats, p: Floats, humidity: Floats) -> Fluid:
     try:
         moist, mu, k, cp = get("Vha"), get("M"), get("K"), get("Cha")
     except ValueError as error:
-        raise InputError("fluid", "humid air at this state", "a state the library covers",
-                         str(error)[:160]) from None
+        raise InputError(
+            "fluid", "humid air at this state", "a state the library covers", str(error)[:160]
+        ) from None
     rho = 1.0 / moist
     return Fluid(
-        "humid air", shape(t), shape(p), shape(rho), shape(mu), shape(mu / rho), shape(cp), shape(k),
-        shape(mu * cp / k), relations=(relation("fluids", "library"),),
+        "humid air",
+        shape(t),
+        shape(p),
+        shape(rho),
+        shape(mu),
+        shape(mu / rho),
+        shape(cp),
+        shape(k),
+        shape(mu * cp / k),
+        relations=(relation("fluids", "library"),),
     )
 
 
-def _given(given: dict[str, FloatLike], temperature: FloatLike | None, pressure: FloatLike | None) -> Fluid:
+def _given(
+    given: dict[str, FloatLike], temperature: FloatLike | None, pressure: FloatLike | None
+) -> Fluid:
     if len(given) > 2:
         raise InputError("fluid", ", ".join(given), "two of density and the two viscosities")
     if set(given) == {"density"} or set(given) == {"dynamic_viscosity"}:
-        raise InputError("fluid", f"{next(iter(given))} alone", "a kinematic viscosity, or two properties")
+        raise InputError(
+            "fluid", f"{next(iter(given))} alone", "a kinematic viscosity, or two properties"
+        )
     shape, flat = arrays.columns(**{n: (v, POSITIVE) for n, v in given.items()})
     v = dict(zip(given, flat, strict=True))
     if "kinematic_viscosity" not in v:
@@ -145,14 +177,13 @@ def _given(given: dict[str, FloatLike], temperature: FloatLike | None, pressure:
     return Fluid("given properties", temperature, pressure, **{n: shape(x) for n, x in v.items()})
 
 
-def _pressure(
-    pressure: FloatLike | None, gauge: FloatLike | None, ambient: FloatLike
-) -> FloatLike:
+def _pressure(pressure: FloatLike | None, gauge: FloatLike | None, ambient: FloatLike) -> FloatLike:
     if gauge is None:
         return ambient if pressure is None else pressure
     if pressure is not None:
         raise InputError("gauge_pressure", "pressure as well", "either pressure or gauge_pressure")
-    return arrays.check("gauge_pressure", gauge, Interval(-ATMOSPHERE, open_low=True)) + ambient
+    above = arrays.check("gauge_pressure", gauge, Interval(-ATMOSPHERE, open_low=True))
+    return np.asarray(above + np.asarray(ambient, dtype=np.float64))
 
 
 def fluid(
@@ -209,7 +240,7 @@ def fluid(
     --------
     >>> air = fluid("air", temperature=298.15)
     >>> f"{air.density:.4f} {air.kinematic_viscosity:.4e}"
-    '1.1839 1.5580e-05'
+    '1.1839 1.5518e-05'
     """
     given = {
         "density": density, "dynamic_viscosity": dynamic_viscosity,
@@ -218,14 +249,18 @@ def fluid(
     properties = {n: v for n, v in given.items() if v is not None}
     if properties:
         if name is not None:
-            raise InputError("fluid", f"name and {', '.join(properties)}", "either a name or properties")
+            raise InputError(
+                "fluid", f"name and {', '.join(properties)}", "either a name or properties"
+            )
         return _given(properties, temperature, pressure)
     if name is None:
         raise InputError("fluid", "neither a name nor properties", "one of the two")
     ambient: FloatLike = ATMOSPHERE
     if altitude is not None:
         if name not in ("air", "humid air") or temperature is not None or pressure is not None:
-            raise InputError("altitude", "another fluid, a temperature or a pressure", "air, and altitude alone")
+            raise InputError(
+                "altitude", "another fluid, a temperature or a pressure", "air, and altitude alone"
+            )
         temperature, ambient = standard_atmosphere(altitude)
     start = _DEFAULT_TEMPERATURE.get(name, 293.15)
     arguments: dict[str, tuple[FloatLike, Interval]] = {

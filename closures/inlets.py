@@ -72,8 +72,12 @@ _RULES: dict[str, dict[str, Callable[[Closure, State], Floats]]] = {
     "gamma": {"gamma": _one},
     "re_theta_t": {"re_theta_t": _onset},
     "reynolds_stresses": {
-        "uu": _isotropic, "vv": _isotropic, "ww": _isotropic,
-        "uv": _zero, "uw": _zero, "vw": _zero,
+        "uu": _isotropic,
+        "vv": _isotropic,
+        "ww": _isotropic,
+        "uv": _zero,
+        "uw": _zero,
+        "vw": _zero,
     },
     "f": {},
 }
@@ -198,11 +202,7 @@ def inlet_from_state(c: Closure, s: State) -> Inlet:
             raise InputError("nu_tilde", "no kinematic_viscosity", "the viscosity of the fluid")
         if variable == "re_theta_t" and "velocity" not in s.values:
             raise InputError("re_theta_t", "no velocity", "the velocity that intensity refers to")
-    flat = {
-        name: rule(c, s)
-        for variable in c.variables
-        for name, rule in _RULES[variable].items()
-    }
+    flat = {name: rule(c, s) for variable in c.variables for name, rule in _RULES[variable].items()}
     notes = tuple(NOTES[v] for v in c.variables if v in NOTES)
     if not c.variables:
         notes = ("an algebraic closure transports nothing: the inlet needs the mean flow only",)

@@ -1,4 +1,4 @@
-"""The inputs of an evaluation: a case, and columns of a table that take the place of its numbers."""
+"""The inputs of an evaluation: a case, and columns of a table in place of some of its numbers."""
 
 from __future__ import annotations
 

@@ -52,6 +52,7 @@ class Ledger:
         values: Floats,
         relation: Relation,
         where: Mask | None = None,
+        /,
         **inputs: str,
     ) -> Floats:
         """Enter a quantity found by a relation from the entries whose paths are named.
@@ -70,7 +71,7 @@ class Ledger:
     def is_label(self, path: str, name: str) -> Mask:
         """Return the rows whose label has a name."""
         codes, names = self.labels[path]
-        return codes == (names.index(name) if name in names else -1)
+        return np.asarray(codes == (names.index(name) if name in names else -1))
 
     def cite(self, key: str) -> None:
         """Note a source of the bibliography."""

@@ -35,7 +35,7 @@ def _build(name: str, row: dict[str, Any]) -> Quantity:
     fields = dict(row)
     if not fields.keys() <= _KEYS or not {"words", "symbol", "unit"} <= fields.keys():
         raise TableError(f"quantities.toml: {name}: needs words, symbol, unit; may hold {_KEYS}")
-    if "source" in fields and fields["source"] not in tables.sources():
+    if "source" in fields and not tables.known_source(fields["source"]):
         raise TableError(f"quantities.toml: {name}: unknown source {fields['source']!r}")
     if "monomial" in fields:
         fields["monomial"] = {base: Fraction(p) for base, p in fields["monomial"].items()}

@@ -53,8 +53,12 @@ def _rows(data: Mapping[str, Any], path: str) -> Iterator[tuple[str, str, str, s
 def _wrapped(text: str, indent: int = 2, first: str | None = None) -> list[str]:
     pad = " " * indent
     return textwrap.wrap(
-        text, WIDTH, initial_indent=pad if first is None else first, subsequent_indent=pad,
-        break_long_words=True, break_on_hyphens=False,
+        text,
+        WIDTH,
+        initial_indent=pad if first is None else first,
+        subsequent_indent=pad,
+        break_long_words=True,
+        break_on_hyphens=False,
     ) or [""]
 
 
@@ -127,9 +131,12 @@ def markdown(sheet: Sheet) -> str:
     """Return the sheet as Markdown (tables in the common pipe form)."""
     closure = sheet["closure"]
     lines = [
-        f"# {_cell(sheet['title'])}", "",
-        f"Closure `{closure['id']}`: {_cell(closure['name'])}", "",
-        "## Findings", "",
+        f"# {_cell(sheet['title'])}",
+        "",
+        f"Closure `{closure['id']}`: {_cell(closure['name'])}",
+        "",
+        "## Findings",
+        "",
     ]
     if sheet.findings:
         lines += ["| severity | finding | message | do | source |", "|---|---|---|---|---|"]
@@ -142,10 +149,18 @@ def markdown(sheet: Sheet) -> str:
     for part, heading in HEADINGS.items():
         if part not in sheet.data:
             continue
-        lines += ["", f"## {heading}", "", "| quantity | symbol | value | unit |", "|---|---|---:|---|"]
+        lines += [
+            "",
+            f"## {heading}",
+            "",
+            "| quantity | symbol | value | unit |",
+            "|---|---|---:|---|",
+        ]
         for words, symbol, value, unit in _rows(sheet[part], part):
             cells = [_cell(c) for c in (words, symbol, value, unit)]
-            lines.append("| " + " | ".join(cells if value else [f"**{cells[0]}**", "", "", ""]) + " |")
+            lines.append(
+                "| " + " | ".join(cells if value else [f"**{cells[0]}**", "", "", ""]) + " |"
+            )
     for heading, items in (
         ("Assumptions", sheet["assumptions"]),
         ("Ranges of the relations used", _ranges(sheet)),

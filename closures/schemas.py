@@ -25,7 +25,10 @@ def _key(key: Key) -> dict[str, Any]:
         body = {"type": "integer", "minimum": int(q.low), "maximum": int(q.high)}
     else:
         q = quantity(key.quantity)
-        body = {"anyOf": [{"type": "number"}, {"type": "string", "maxLength": 80}], "x-unit": q.unit}
+        body = {
+            "anyOf": [{"type": "number"}, {"type": "string", "maxLength": 80}],
+            "x-unit": q.unit,
+        }
         if key.kind == "length":
             multiple = {
                 "type": "object",
@@ -42,7 +45,10 @@ def case_schema() -> dict[str, Any]:
     properties: dict[str, Any] = {}
     for name, help_ in tables.read("case.toml")["tables"].items():
         properties[name] = {
-            "type": "object", "description": help_, "properties": {}, "additionalProperties": False,
+            "type": "object",
+            "description": help_,
+            "properties": {},
+            "additionalProperties": False,
         }
     for path, key in keys().items():
         table, _, name = path.rpartition(".")
@@ -82,8 +88,10 @@ def sheet_schema() -> dict[str, Any]:
     }
     text = {"type": "string"}
     source = {
-        "type": "object", "properties": {"key": text, "citation": text},
-        "required": ["key", "citation"], "additionalProperties": False,
+        "type": "object",
+        "properties": {"key": text, "citation": text},
+        "required": ["key", "citation"],
+        "additionalProperties": False,
     }
     relation = {
         "type": "object",
@@ -92,14 +100,17 @@ def sheet_schema() -> dict[str, Any]:
             "range": {
                 "type": "object",
                 "additionalProperties": {
-                    "type": "array", "items": {"type": "number"}, "minItems": 2, "maxItems": 2,
+                    "type": "array",
+                    "items": {"type": "number"},
+                    "minItems": 2,
+                    "maxItems": 2,
                 },
             },
         },
         "required": ["id", "title", "formula", "source", "status", "range"],
         "additionalProperties": False,
     }
-    closure = {n: text for n in ("id", "name", "family", "source")}
+    closure = dict.fromkeys(("id", "name", "family", "source"), text)
     return {
         "$schema": DRAFT,
         "$id": "urn:closures:sheet:1",
@@ -118,6 +129,15 @@ def sheet_schema() -> dict[str, Any]:
             "cautions": {"type": "array", "items": text, "minItems": 1},
             "units": {"type": "object", "additionalProperties": text},
         },
-        "required": ["schema", "title", "version", "closure", "findings", "sources", "cautions", "units"],
+        "required": [
+            "schema",
+            "title",
+            "version",
+            "closure",
+            "findings",
+            "sources",
+            "cautions",
+            "units",
+        ],
         "additionalProperties": False,
     }

@@ -17,7 +17,7 @@ SCHEMA = "closures-sheet/1"
 CAUTIONS = (
     "This sheet is a set-up aid. Local codes and the judgement of a licensed engineer decide.",
     "Each correlation holds in the range its source states; use outside is a finding above.",
-    "Inlet turbulence that was estimated must be replaced by measurements where results depend on it.",
+    "Estimated inlet turbulence must be replaced by measurements where results depend on it.",
 )
 # parts of the sheet in the order they are shown; entries below other heads stay internal
 PARTS = ("fluid", "flow", "inlet", "wall", "scales")
@@ -65,7 +65,11 @@ def _put(data: dict[str, Any], path: str, value: Any) -> None:
 
 def make_sheet(ledger: Ledger, row: int = 0) -> Sheet:
     """Gather the entries of one row of an evaluation into a sheet."""
-    data: dict[str, Any] = {"schema": SCHEMA, "title": ledger.texts["title"], "version": __version__}
+    data: dict[str, Any] = {
+        "schema": SCHEMA,
+        "title": ledger.texts["title"],
+        "version": __version__,
+    }
     units: dict[str, str] = {}
     data["closure"] = {
         name: ledger.texts[f"closure.{name}"] for name in ("id", "name", "family", "source")

@@ -15,7 +15,7 @@ _TEXT = ("title", "source", "status", "note", "of", "convention")
 
 @dataclass(frozen=True, slots=True)
 class Usual:
-    """A usual value with its range, source and status; which numbers it has depends on the table."""
+    """A usual value with range, source and status; which numbers it has depends on the table."""
 
     id: str
     title: str
@@ -34,7 +34,7 @@ def _build(table: str, id_: str, row: dict[str, Any], needed: str) -> Usual:
     for name in ("title", "source", "status", needed):
         if name not in row:
             raise TableError(f"{table}: {id_}: {name} is missing")
-    if row["source"] != "common practice" and row["source"] not in tables.sources():
+    if row["source"] != "common practice" and not tables.known_source(row["source"]):
         raise TableError(f"{table}: {id_}: source {row['source']!r} is not in the bibliography")
     numbers = {n: float(evaluate(v)) for n, v in row.items() if n not in _TEXT}
     if "low" in numbers and not numbers["low"] <= numbers["value"] <= numbers["high"]:
@@ -118,4 +118,7 @@ def usual_length(name: str, field: str = "length_estimate") -> Usual:
 def listing(table: str) -> list[Usual]:
     """Return every row of ``surfaces``, ``terrains``, ``intensities`` or ``lengths``."""
     needed = {"surfaces": "value", "terrains": "z0", "intensities": "value", "lengths": "times"}
-    return [_build(f"{table}.toml", n, row, needed[table]) for n, row in tables.read(f"{table}.toml").items()]
+    return [
+        _build(f"{table}.toml", n, row, needed[table])
+        for n, row in tables.read(f"{table}.toml").items()
+    ]

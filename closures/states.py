@@ -93,7 +93,9 @@ def plan(wanted: str, first: str, second: str) -> Factors:
     y = (ak * we - ae * wk) / det
     factors = {first: x, second: y}
     for base in sorted(({*w} | {*a} | {*b}) - {"k", "epsilon"}):
-        power = w.get(base, Fraction(0)) - x * a.get(base, Fraction(0)) - y * b.get(base, Fraction(0))
+        power = (
+            w.get(base, Fraction(0)) - x * a.get(base, Fraction(0)) - y * b.get(base, Fraction(0))
+        )
         factors[base] = factors.get(base, Fraction(0)) + power
     return tuple((base, power) for base, power in factors.items() if power)
 
@@ -223,9 +225,10 @@ class State:
         """Return a quantity as a flat array (used by evaluations over many rows)."""
         if name == "nu_tilde":
             ratio = self.flat("viscosity_ratio")
-            return eddy_viscosity.spalart_allmaras_chi(ratio, self.c_v1) * self.values[
-                "kinematic_viscosity"
-            ]
+            return (
+                eddy_viscosity.spalart_allmaras_chi(ratio, self.c_v1)
+                * self.values["kinematic_viscosity"]
+            )
         if name not in algebraic():
             raise AttributeError(f"a turbulence state has no {name!r}")
         if name in self.given:
@@ -277,7 +280,8 @@ def _check_pair(given: Mapping[str, FloatLike], parameters: Mapping[str, FloatLi
     for name in given:
         if name == "length_scale":
             raise InputError(
-                name, "a length without its convention",
+                name,
+                "a length without its convention",
                 "mixing_length, eddy_viscosity_length, dissipation_length or integral_length",
             )
         if name not in INPUTS:
@@ -383,7 +387,7 @@ def _state(
     parameters: dict[str, FloatLike] = {n: v for n, v in filled.items() if v is not None}
     _check_pair(given, parameters)
     shape, flat = arrays.columns(
-        defer=defer,
+        defer,
         **{n: (v, interval(n)) for n, v in given.items()},
         **{n: (v, POSITIVE) for n, v in parameters.items()},
     )
@@ -445,7 +449,7 @@ def convert(
     result = {n: (out[n] if out is not None else np.empty(whole.shape.size)) for n in names}
     programs = whole.programs(names)
     constants = {n: v for n, v in whole.values.items() if v.size == 1} | _numbers()
-    fixed = _Block(constants) if _CONSTANTS <= constants.keys() else None
+    fixed = _Block(constants) if constants.keys() >= _CONSTANTS else None
     scales = {name: fixed.scale(program) for name, program in programs.items()} if fixed else {}
     for start in range(0, whole.shape.size, arrays.BLOCK):
         part = slice(start, start + arrays.BLOCK)

@@ -10,19 +10,53 @@ from walllaw.errors import TableError, nearest
 
 STATUS = ("confirmed", "secondary", "memory", "unsure", "derived", "common practice")
 FAMILIES = (
-    "k-epsilon", "low-re-k-epsilon", "elliptic-relaxation", "k-omega", "k-tau", "one-equation",
-    "algebraic", "second-moment", "explicit-algebraic-stress", "transition", "heat",
+    "k-epsilon",
+    "low-re-k-epsilon",
+    "elliptic-relaxation",
+    "k-omega",
+    "k-tau",
+    "one-equation",
+    "algebraic",
+    "second-moment",
+    "explicit-algebraic-stress",
+    "transition",
+    "heat",
 )
 VARIABLES = (
-    "k", "epsilon", "epsilon_tilde", "omega", "tau", "nu_tilde", "v2", "zeta", "f", "gamma",
-    "re_theta_t", "R", "reynolds_stresses", "laminar_k", "turbulent_k",
+    "k",
+    "epsilon",
+    "epsilon_tilde",
+    "omega",
+    "tau",
+    "nu_tilde",
+    "v2",
+    "zeta",
+    "f",
+    "gamma",
+    "re_theta_t",
+    "R",
+    "reynolds_stresses",
+    "laminar_k",
+    "turbulent_k",
 )
 TREATMENTS = ("resolved", "wall-function", "blended")
 DECAY = ("k-epsilon", "k-omega", "k-tau", "none")
 _REQUIRED = ("name", "family", "variables", "source", "status", "summary", "evidence")
 _TOP = {
-    *_REQUIRED, "read_in", "base", "sigma_convention", "use", "misprints", "coefficients", "inner",
-    "outer", "alternatives", "functions", "algebra", "wall", "free_stream",
+    *_REQUIRED,
+    "read_in",
+    "base",
+    "sigma_convention",
+    "use",
+    "misprints",
+    "coefficients",
+    "inner",
+    "outer",
+    "alternatives",
+    "functions",
+    "algebra",
+    "wall",
+    "free_stream",
 }
 _ROW = {"value", "expression", "symbol", "source", "where", "status", "note", "read_in"}
 _TEXT = {"formula", "rule", "source", "where", "status", "note", "read_in"}
@@ -40,7 +74,7 @@ def _known(id_: str, key: str, value: object, accepted: tuple[str, ...]) -> None
 
 
 def _source(id_: str, key: str, value: object) -> None:
-    if value not in tables.sources():
+    if not tables.known_source(value):
         raise _fail(id_, key, f"source {value!r} is not in the bibliography")
 
 
@@ -50,8 +84,11 @@ def _keys(id_: str, key: str, row: object, accepted: set[str]) -> Mapping[str, A
     for name in row:
         if name not in accepted:
             near = nearest(name, accepted)
-            raise _fail(id_, f"{key}.{name}" if key else name,
-                        "unknown key" + (f"; did you mean {near!r}?" if near else ""))
+            raise _fail(
+                id_,
+                f"{key}.{name}" if key else name,
+                "unknown key" + (f"; did you mean {near!r}?" if near else ""),
+            )
     return row
 
 
@@ -104,7 +141,9 @@ def _head(id_: str, raw: Mapping[str, Any]) -> None:
 
 
 def _wall(id_: str, raw: Mapping[str, Any]) -> None:
-    wall = _keys(id_, "wall", raw.get("wall", {}), {"treatments", "y_plus_max", "conditions", "rough"})
+    wall = _keys(
+        id_, "wall", raw.get("wall", {}), {"treatments", "y_plus_max", "conditions", "rough"}
+    )
     if raw["family"] != "heat" and not wall.get("treatments"):
         raise _fail(id_, "wall.treatments", "is missing")
     for treatment in wall.get("treatments", []):
@@ -116,7 +155,9 @@ def _wall(id_: str, raw: Mapping[str, Any]) -> None:
 def _free_stream(id_: str, raw: Mapping[str, Any]) -> None:
     if "free_stream" not in raw:
         raise _fail(id_, "free_stream", "is missing")
-    part = _keys(id_, "free_stream", raw["free_stream"], {"decay", "decay_set", "note", "recommendations"})
+    part = _keys(
+        id_, "free_stream", raw["free_stream"], {"decay", "decay_set", "note", "recommendations"}
+    )
     _known(id_, "free_stream.decay", part.get("decay"), DECAY)
     for row in part.get("recommendations", []):
         _keys(id_, "free_stream.recommendations", row, {"quantity", *_TEXT})

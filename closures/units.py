@@ -16,20 +16,47 @@ from typing import Any
 from walllaw import tables
 from walllaw.errors import InputError, nearest
 
-_TEXT = re.compile(r"\s*([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)\s*(.*?)\s*", re.ASCII)
-_TOKEN = r"([A-Za-zµμ°%][A-Za-zµμ°0-9_]*?)(?:\^|\*\*)?(-?[0-9])?(?=[\s.*·/()]|$)|(/)|([.*·\s]+)|([()])"  # compiled on first use: most quick commands have no unit
+_TEXT = re.compile(
+    r"\s*([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)\s*(.*?)\s*", re.ASCII
+)
+# name with exponent | slash | product | bracket; compiled when a unit is met: quick commands have none
+_PIECE = (
+    r"([A-Za-zµμ°%][A-Za-zµμ°0-9_]*?)(?:\^|\*\*)?(-?[0-9])?(?=[\s.*·/()]|$)"
+    r"|(/)|([.*·\s]+)|([()])"
+)
 _MAX_TEXT, _MAX_UNIT, _MAX_FACTORS = 80, 40, 8
-_TEMPERATURES = {"degC", "°C", "celsius", "degF", "°F", "fahrenheit", "degree_Celsius", "degree_Fahrenheit"}
+_TEMPERATURES = {
+    "degC",
+    "°C",
+    "celsius",
+    "degF",
+    "°F",
+    "fahrenheit",
+    "degree_Celsius",
+    "degree_Fahrenheit",
+}
 _GAUGE = {"psig", "barg", "bar_g", "Pag", "kPag"}
 # what a dimension measures, by the exponents of length, time, mass, temperature
 _WORDS = {
-    (1, 0, 0, 0): "a length", (0, 1, 0, 0): "a time", (1, -1, 0, 0): "a velocity",
-    (2, -1, 0, 0): "a kinematic viscosity", (-1, -1, 1, 0): "a dynamic viscosity",
-    (-1, -2, 1, 0): "a pressure", (-3, 0, 1, 0): "a density", (-2, -2, 1, 0): "a pressure gradient or specific weight",
-    (3, -1, 0, 0): "a volume flow", (0, -1, 1, 0): "a mass flow", (0, 0, 0, 1): "a temperature",
-    (0, -1, 0, 0): "a rate", (2, -2, 0, 0): "an energy per mass", (2, -3, 0, 0): "a dissipation rate",
-    (0, 0, 0, 0): "a plain number", (0, 0, 1, 0): "a mass", (2, 0, 0, 0): "an area", (3, 0, 0, 0): "a volume",
-}  # fmt: skip
+    (0, 0, 0, 0): "a plain number",
+    (1, 0, 0, 0): "a length",
+    (2, 0, 0, 0): "an area",
+    (3, 0, 0, 0): "a volume",
+    (0, 1, 0, 0): "a time",
+    (0, -1, 0, 0): "a rate",
+    (1, -1, 0, 0): "a velocity",
+    (3, -1, 0, 0): "a volume flow",
+    (0, 0, 1, 0): "a mass",
+    (0, -1, 1, 0): "a mass flow",
+    (-3, 0, 1, 0): "a density",
+    (2, -1, 0, 0): "a kinematic viscosity",
+    (-1, -1, 1, 0): "a dynamic viscosity",
+    (-1, -2, 1, 0): "a pressure",
+    (-2, -2, 1, 0): "a pressure gradient or specific weight",
+    (2, -2, 0, 0): "an energy per mass",
+    (2, -3, 0, 0): "a dissipation rate",
+    (0, 0, 0, 1): "a temperature",
+}
 _HINTS = {
     ("a dynamic viscosity", "a kinematic viscosity"):
         "this is a dynamic viscosity: give it as dynamic_viscosity, or divide by the density",
@@ -47,8 +74,7 @@ Dimension = tuple[int, int, int, int]
 def _registry() -> Any:
     import pint
 
-    registry = pint.UnitRegistry(tables.path("units.txt"), on_redefinition="raise")
-    return registry
+    return pint.UnitRegistry(tables.path("units.txt"), on_redefinition="raise")
 
 
 @cache
@@ -73,7 +99,7 @@ def _single(name: str) -> tuple[float, Dimension] | None:
             return 1.0, (0, 0, 0, 1)
         base = one.to_base_units()
         dims = {str(k).strip("[]"): int(v) for k, v in base.dimensionality.items()}
-    except Exception:  # noqa: BLE001 - the library has a dozen ways to refuse a name
+    except Exception:
         return None
     mass = dims.get("mass", 0)
     factor = float(base.magnitude) * 1000.0**-mass  # its base of mass is the gram
@@ -81,8 +107,8 @@ def _single(name: str) -> tuple[float, Dimension] | None:
 
 
 def _factors(unit: str) -> Iterator[tuple[str, int]]:
-    """Take a unit apart into (name, exponent); raises ValueError for anything but a plain product."""
-    token = re.compile(_TOKEN)
+    """Take a unit apart into (name, exponent); ValueError for anything but a plain product."""
+    token = re.compile(_PIECE)
     position, sign, depth, expect = 0, 1, 0, True
     while position < len(unit):
         match = token.match(unit, position)
@@ -126,7 +152,9 @@ def _unit(unit: str) -> tuple[float, Dimension]:
     factor, dimension = 1.0, [0, 0, 0, 0]
     for name, power in parts:
         if name in _GAUGE:
-            raise InputError("unit", repr(name), "an absolute unit", "use gauge_pressure for a gauge reading")
+            raise InputError(
+                "unit", repr(name), "an absolute unit", "use gauge_pressure for a gauge reading"
+            )
         if name == "%":
             factor *= 0.01**power
             continue
@@ -135,7 +163,12 @@ def _unit(unit: str) -> tuple[float, Dimension]:
         known = _single(name)
         if known is None:
             near = nearest(name, _names())
-            raise InputError("unit", repr(name), "a unit of the manual", f"did you mean {near!r}?" if near else "")
+            raise InputError(
+                "unit",
+                repr(name),
+                "a unit of the manual",
+                f"did you mean {near!r}?" if near else "",
+            )
         factor *= known[0] ** power
         dimension = [d + power * e for d, e in zip(dimension, known[1], strict=True)]
     return factor, (dimension[0], dimension[1], dimension[2], dimension[3])
@@ -206,7 +239,9 @@ def _convert(number: float, given: str, unit: str, field: str, text: str) -> flo
     try:
         factor, dimension = _unit(given)
     except InputError as error:
-        raise InputError(field, f"{text!r}: unit {error.given}", error.accepted, error.hint) from None
+        raise InputError(
+            field, f"{text!r}: unit {error.given}", error.accepted, error.hint
+        ) from None
     wanted = (0, 0, 0, 0) if unit == "1" else _unit(unit)[1]
     if dimension != wanted:
         words = _WORDS.get(dimension, "something else")

@@ -46,7 +46,9 @@ def saturation_pressure(temperature: Floats) -> Floats:
         r["a1"] * s + r["a2"] * s * h + r["a3"] * s3 + r["a4"] * s3 * h + r["a5"] * s3 * s
         + r["a6"] * s3 * s3 * s * h
     )  # fmt: skip
-    return r["critical_pressure"] * np.exp(r["critical_temperature"] / temperature * total)
+    return np.asarray(
+        r["critical_pressure"] * np.exp(r["critical_temperature"] / temperature * total)
+    )
 
 
 def viscosity(temperature: Floats, density: Floats) -> Floats:

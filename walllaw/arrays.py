@@ -60,8 +60,12 @@ class Interval:
 FINITE = Interval()
 POSITIVE = Interval(0.0, open_low=True)
 NONNEGATIVE = Interval(0.0)
-# a log law whose exponentials stay inside double precision
-KAPPA = Interval(0.0, 1.0, open_low=True)
+# quantities of a flow, in SI or in wall units: products and powers of a few of them stay doubles
+AMOUNT = Interval(1e-30, 1e30)
+AMOUNT_OR_ZERO = Interval(0.0, 1e30)
+SIGNED = Interval(-1e30, 1e30)
+# log laws whose exponentials stay doubles
+KAPPA = Interval(0.01, 1.0)
 INTERCEPT = Interval(-100.0, 100.0)
 
 
@@ -133,7 +137,7 @@ class Shape:
 
 
 def columns(
-    *, defer: bool = False, **arguments: tuple[FloatLike, Interval]
+    defer: bool = False, /, **arguments: tuple[FloatLike, Interval]
 ) -> tuple[Shape, list[Floats]]:
     """Check and flatten arguments that broadcast against each other.
 
@@ -181,9 +185,7 @@ def columns(
     return Shape(dims), flat
 
 
-def blocks(
-    kernel: Callable[..., Floats], *arguments: Floats, out: Floats | None = None
-) -> Floats:
+def blocks(kernel: Callable[..., Floats], *arguments: Floats, out: Floats | None = None) -> Floats:
     """Evaluate a kernel of flat arrays block by block into one output array.
 
     Parameters

@@ -79,9 +79,7 @@ def nearest(name: str, names: Iterable[str]) -> str | None:
     best: tuple[float, str] | None = None
     for candidate in names:
         distance = _distance(lowered, candidate.lower().replace("_", "-"))
-        if distance * 3 <= max(len(name), len(candidate)) and (
-            best is None or distance < best[0]
-        ):
+        if distance * 3 <= max(len(name), len(candidate)) and (best is None or distance < best[0]):
             best = (distance, candidate)
     return best[1] if best else None
 

@@ -12,7 +12,13 @@ from __future__ import annotations
 from typing import Any
 
 from walllaw import arrays
-from walllaw.arrays import FINITE, NONNEGATIVE, POSITIVE, FloatLike, Floats
+from walllaw.arrays import (
+    AMOUNT,
+    AMOUNT_OR_ZERO,
+    SIGNED,
+    FloatLike,
+    Floats,
+)
 from walllaw.nusselt import (
     colburn,
     dittus_boelter,
@@ -81,10 +87,10 @@ def _cell(
 ) -> tuple[arrays.Shape, Floats, list[Floats]]:
     """Return the shape, the heat-transfer coefficient and the other arguments, flat."""
     shape, (u, rho, cp, t, *rest) = arrays.columns(
-        friction_velocity=(friction_velocity, NONNEGATIVE),
-        density=(density, POSITIVE),
-        specific_heat=(specific_heat, POSITIVE),
-        t_plus=(t_plus, POSITIVE),
+        friction_velocity=(friction_velocity, AMOUNT_OR_ZERO),
+        density=(density, AMOUNT),
+        specific_heat=(specific_heat, AMOUNT),
+        t_plus=(t_plus, AMOUNT),
         **more,
     )
     return shape, rho * cp * u / t, rest
@@ -181,8 +187,8 @@ def wall_heat_flux(
         density,
         specific_heat,
         t_plus,
-        wall_temperature=(wall_temperature, POSITIVE),
-        temperature=(temperature, POSITIVE),
+        wall_temperature=(wall_temperature, AMOUNT),
+        temperature=(temperature, AMOUNT),
     )
     c.use()
     return shape(h * (t_w - t_p))
@@ -233,14 +239,14 @@ def wall_temperature(
     330.0
     """
     c = relation("heat", "wall_temperature")
-    arrays.check("friction_velocity", friction_velocity, POSITIVE)
+    arrays.check("friction_velocity", friction_velocity, AMOUNT)
     shape, h, (q, t_p) = _cell(
         friction_velocity,
         density,
         specific_heat,
         t_plus,
-        heat_flux=(heat_flux, FINITE),
-        temperature=(temperature, POSITIVE),
+        heat_flux=(heat_flux, SIGNED),
+        temperature=(temperature, AMOUNT),
     )
     c.use()
     return shape(t_p + q / h)

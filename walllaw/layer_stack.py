@@ -11,7 +11,13 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval, Shape
+from walllaw.arrays import (
+    AMOUNT,
+    FloatLike,
+    Floats,
+    Interval,
+    Shape,
+)
 from walllaw.errors import InputError
 from walllaw.geometric_layers import (
     finite,
@@ -25,7 +31,7 @@ from walllaw.geometric_layers import (
 )
 from walllaw.relation import relation
 
-_COUNT = Interval(1.0)
+_COUNT = Interval(1.0, 1e12)
 _NAMES = ("first", "growth", "count", "total", "last")
 _WHOLE = 1e-9  # a count this close above a whole number is that number: rounding of the inputs
 
@@ -103,7 +109,7 @@ def layers(
         accepted = f"exactly three of {', '.join(_NAMES)}"
         raise InputError("layers", ", ".join(given) or "nothing", accepted)
     checked: dict[str, Any] = {
-        name: (value, _COUNT if name == "count" else POSITIVE) for name, value in given.items()
+        name: (value, _COUNT if name == "count" else AMOUNT) for name, value in given.items()
     }
     shape, flat = arrays.columns(**checked)
     v = dict(zip(given, flat, strict=True))
@@ -166,10 +172,10 @@ def grid_family(
     if isinstance(levels, bool) or not isinstance(levels, int) or levels < 1:
         raise InputError("levels", repr(levels), "a whole number of at least 1")
     shape, (h, g, n, f) = arrays.columns(
-        first=(first, POSITIVE),
-        growth=(growth, POSITIVE),
-        count=(count, Interval(2.0)),
-        factor=(c["factor"] if factor is None else factor, POSITIVE),
+        first=(first, AMOUNT),
+        growth=(growth, AMOUNT),
+        count=(count, Interval(2.0, 1e12)),
+        factor=(c["factor"] if factor is None else factor, AMOUNT),
     )
     if shape.dims != ():
         raise InputError("grid_family", "arrays", "single numbers")
@@ -198,9 +204,10 @@ def _real_count(v: dict[str, Floats]) -> Floats:
         equal = np.ones(1)
     elif "growth" not in v:
         first, total = v["first"], v["total"]
-        refuse("total", total, total < first + last, "at least the first and the last layer")
-        # growth - 1 and last/first - 1 without cancellation where the layers are nearly equal
-        climb, rise = np.log1p((last - first) / (total - last)), np.log1p((last - first) / first)
+        small = (total < first + last) | (total <= first) | (total <= last)
+        refuse("total", total, small, "more than the first and the last layer")
+        # last - first, once and exactly: the two sides cancel alike where layers are nearly equal
+        climb, rise = _log_ratio(last - first, total - last), _log_ratio(last - first, first)
         equal = total / last
     else:
         growth, total = v["growth"], v["total"]
@@ -214,6 +221,13 @@ def _real_count(v: dict[str, Floats]) -> Floats:
     count = np.where(level, equal, 1.0 + rise / np.where(level, 1.0, climb))
     refuse("last", last, count < 1.0, "a last layer that the growth leads to")
     return count
+
+
+def _log_ratio(difference: Floats, base: Floats) -> Floats:
+    """Return ln(1 + difference/base), from the sum where that is not near base."""
+    x = difference / base
+    near = np.abs(x) < 0.5
+    return np.where(near, np.log1p(np.where(near, x, 0.0)), np.log((base + difference) / base))
 
 
 def _complete(v: dict[str, Floats]) -> dict[str, Floats]:

@@ -53,10 +53,16 @@ def log_law_pair(name: str) -> LogLawPair:
     if name not in rows:
         raise unknown_name("log_law", name, rows)
     row = rows[name]
-    if set(row) - _KEYS or ("B" in row) == ("E" in row) or not {"kappa", "source", "status"} <= set(row):
+    if (
+        set(row) - _KEYS
+        or ("B" in row) == ("E" in row)
+        or not {"kappa", "source", "status"} <= set(row)
+    ):
         raise TableError(f"log_law.toml: {name}: needs kappa, one of B and E, source and status")
-    if row["source"] != "common practice" and row["source"] not in tables.sources():
-        raise TableError(f"log_law.toml: {name}: source {row['source']!r} is not in the bibliography")
+    if row["source"] != "common practice" and not tables.known_source(row["source"]):
+        raise TableError(
+            f"log_law.toml: {name}: source {row['source']!r} is not in the bibliography"
+        )
     kappa = float(evaluate(row["kappa"]))
     printed = "B" if "B" in row else "E"
     value = float(evaluate(row[printed]))

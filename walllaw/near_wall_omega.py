@@ -10,7 +10,14 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import FINITE, KAPPA, NONNEGATIVE, POSITIVE, FloatLike, Floats
+from walllaw.arrays import (
+    AMOUNT,
+    AMOUNT_OR_ZERO,
+    KAPPA,
+    SIGNED,
+    FloatLike,
+    Floats,
+)
 from walllaw.errors import unknown_name
 from walllaw.relation import Relation, relation
 
@@ -57,7 +64,7 @@ def blend(
     """
     c = _blend_relation(kind)
     shape, (v, lg, yp) = arrays.columns(
-        viscous=(viscous, FINITE), log=(log, FINITE), y_plus=(y_plus, NONNEGATIVE)
+        viscous=(viscous, SIGNED), log=(log, SIGNED), y_plus=(y_plus, AMOUNT_OR_ZERO)
     )
     c.use(y_plus=yp)
     return shape(_blend(v, lg, yp, kind))
@@ -164,9 +171,9 @@ def _sublayer_omega(
 ) -> Any:
     c = relation("wall_function", name)
     shape, (y, nu, b) = arrays.columns(
-        distance=(distance, POSITIVE),
-        kinematic_viscosity=(kinematic_viscosity, POSITIVE),
-        beta=(c["beta"] if beta is None else beta, POSITIVE),
+        distance=(distance, AMOUNT),
+        kinematic_viscosity=(kinematic_viscosity, AMOUNT),
+        beta=(c["beta"] if beta is None else beta, AMOUNT),
     )
     c.use(distance=y, kinematic_viscosity=nu, beta=b)
     return shape(c["factor"] * (nu / y / y) / b)
@@ -215,10 +222,10 @@ def omega_log(
     """
     c = relation("wall_function", "omega_log")
     shape, (y, u, kap, bs) = arrays.columns(
-        distance=(distance, POSITIVE),
-        friction_velocity=(friction_velocity, NONNEGATIVE),
+        distance=(distance, AMOUNT),
+        friction_velocity=(friction_velocity, AMOUNT_OR_ZERO),
         kappa=(kappa, KAPPA),
-        beta_star=(beta_star, POSITIVE),
+        beta_star=(beta_star, AMOUNT),
     )
     c.use(distance=y, friction_velocity=u)
     return shape(u / (np.sqrt(bs) * kap * y))
@@ -272,11 +279,11 @@ def omega_blended(
     viscous = omega_viscous(distance, kinematic_viscosity, beta=beta)
     log = omega_log(distance, friction_velocity, kappa=kappa, beta_star=beta_star)
     shape, (v, lg, y, u, nu) = arrays.columns(
-        viscous=(viscous, FINITE),
-        log=(log, FINITE),
-        distance=(distance, POSITIVE),
-        friction_velocity=(friction_velocity, NONNEGATIVE),
-        kinematic_viscosity=(kinematic_viscosity, POSITIVE),
+        viscous=(viscous, SIGNED),
+        log=(log, SIGNED),
+        distance=(distance, AMOUNT),
+        friction_velocity=(friction_velocity, AMOUNT_OR_ZERO),
+        kinematic_viscosity=(kinematic_viscosity, AMOUNT),
     )
     yp = y * u / nu
     c.use(y_plus=yp)

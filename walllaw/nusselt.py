@@ -10,11 +10,16 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval
+from walllaw.arrays import (
+    AMOUNT,
+    FloatLike,
+    Floats,
+    Interval,
+)
 from walllaw.errors import InputError, unknown_name
 from walllaw.relation import relation
 
-_TURBULENT = Interval(1e3, open_low=True)
+_TURBULENT = Interval(1e3, 1e30, open_low=True)
 _GEOMETRIES = ("pipe", "plates")
 _WALLS = ("heat_flux", "temperature")
 
@@ -62,7 +67,7 @@ def laminar(geometry: str = "pipe", wall: str = "heat_flux") -> float:
 
 
 def _duct(reynolds: FloatLike, prandtl: FloatLike) -> tuple[arrays.Shape, list[Floats]]:
-    return arrays.columns(reynolds=(reynolds, POSITIVE), prandtl=(prandtl, POSITIVE))
+    return arrays.columns(reynolds=(reynolds, AMOUNT), prandtl=(prandtl, AMOUNT))
 
 
 def dittus_boelter(reynolds: FloatLike, prandtl: FloatLike, *, cooled: bool = False) -> Any:
@@ -200,9 +205,9 @@ def sieder_tate(
     """
     c = relation("heat", "sieder_tate")
     shape, (re, pr, ratio) = arrays.columns(
-        reynolds=(reynolds, POSITIVE),
-        prandtl=(prandtl, POSITIVE),
-        wall_viscosity_ratio=(wall_viscosity_ratio, POSITIVE),
+        reynolds=(reynolds, AMOUNT),
+        prandtl=(prandtl, AMOUNT),
+        wall_viscosity_ratio=(wall_viscosity_ratio, AMOUNT),
     )
     c.use(reynolds=re, prandtl=pr)
     plain = c["factor"] * np.power(re, c["reynolds"]) * np.cbrt(pr)
@@ -360,7 +365,7 @@ def _with_friction(
         darcy_friction = petukhov_friction(reynolds)
     return arrays.columns(
         reynolds=(reynolds, _TURBULENT),
-        prandtl=(prandtl, Interval(0.1)),
+        prandtl=(prandtl, Interval(0.1, 1e30)),
         darcy_friction=(darcy_friction, Interval(0.0, 0.25, open_low=True)),
     )
 

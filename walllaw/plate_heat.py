@@ -10,7 +10,11 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import NONNEGATIVE, POSITIVE, FloatLike
+from walllaw.arrays import (
+    AMOUNT,
+    AMOUNT_OR_ZERO,
+    FloatLike,
+)
 from walllaw.errors import InputError
 from walllaw.relation import relation
 
@@ -56,7 +60,7 @@ def plate_laminar(reynolds: FloatLike, prandtl: FloatLike, *, mean: bool = False
     33.2
     """
     c = relation("heat", "plate_laminar")
-    shape, (re, pr) = arrays.columns(reynolds=(reynolds, NONNEGATIVE), prandtl=(prandtl, POSITIVE))
+    shape, (re, pr) = arrays.columns(reynolds=(reynolds, AMOUNT_OR_ZERO), prandtl=(prandtl, AMOUNT))
     c.use(reynolds=re, prandtl=pr)
     return shape((2.0 if mean else 1.0) * c["factor"] * np.sqrt(re) * np.cbrt(pr))
 
@@ -102,7 +106,7 @@ def plate_turbulent(reynolds: FloatLike, prandtl: FloatLike, *, mean: bool = Fal
     1867.634
     """
     c = relation("heat", "plate_turbulent")
-    shape, (re, pr) = arrays.columns(reynolds=(reynolds, NONNEGATIVE), prandtl=(prandtl, POSITIVE))
+    shape, (re, pr) = arrays.columns(reynolds=(reynolds, AMOUNT_OR_ZERO), prandtl=(prandtl, AMOUNT))
     c.use(reynolds=re, prandtl=pr)
     local = c["factor"] * np.power(re, c["exponent"]) * np.cbrt(pr)
     return shape(local / c["exponent"] if mean else local)
@@ -154,9 +158,9 @@ def plate_mixed(
     c = relation("heat", "plate_mixed")
     chosen = c["transition"] if transition_reynolds is None else transition_reynolds
     shape, (re, pr, start) = arrays.columns(
-        reynolds=(reynolds, POSITIVE),
-        prandtl=(prandtl, POSITIVE),
-        transition_reynolds=(chosen, NONNEGATIVE),
+        reynolds=(reynolds, AMOUNT),
+        prandtl=(prandtl, AMOUNT),
+        transition_reynolds=(chosen, AMOUNT_OR_ZERO),
     )
     if (re < start).any():
         raise InputError("reynolds", f"{float(re.min()):.6g}", "at least the transition value")
@@ -200,7 +204,7 @@ def reynolds_analogy(skin_friction: FloatLike) -> Any:
     0.002
     """
     c = relation("heat", "reynolds_analogy")
-    shape, (cf,) = arrays.columns(skin_friction=(skin_friction, NONNEGATIVE))
+    shape, (cf,) = arrays.columns(skin_friction=(skin_friction, AMOUNT_OR_ZERO))
     c.use(skin_friction=cf)
     return shape(cf / 2.0)
 
@@ -245,7 +249,7 @@ def chilton_colburn(skin_friction: FloatLike, prandtl: FloatLike) -> Any:
     """
     c = relation("heat", "chilton_colburn")
     shape, (cf, pr) = arrays.columns(
-        skin_friction=(skin_friction, NONNEGATIVE), prandtl=(prandtl, POSITIVE)
+        skin_friction=(skin_friction, AMOUNT_OR_ZERO), prandtl=(prandtl, AMOUNT)
     )
     c.use(skin_friction=cf, prandtl=pr)
     root = np.cbrt(pr)

@@ -118,12 +118,14 @@ def _build(key: str, row: Mapping[str, Any]) -> Relation:
         raise TableError(f"relation {key}: {sorted(missing)[0]!r} is missing")
     if row["status"] not in STATUS:
         raise TableError(f"relation {key}: status {row['status']!r} is none of {', '.join(STATUS)}")
-    if row["source"] != "common practice" and row["source"] not in tables.sources():
+    if row["source"] != "common practice" and not tables.known_source(row["source"]):
         raise TableError(f"relation {key}: source {row['source']!r} is not in the bibliography")
     known: dict[str, Number] = {}
     for name, text in row.get("coefficients", {}).items():
         if not isinstance(text, str):
-            raise TableError(f"relation {key}: write coefficient {name} as text, exactly as printed")
+            raise TableError(
+                f"relation {key}: write coefficient {name} as text, exactly as printed"
+            )
         known[name] = evaluate(text, known)
     valid: dict[str, tuple[float, float]] = {}
     for name, limits in row.get("valid", {}).items():

@@ -11,11 +11,16 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import KAPPA, NONNEGATIVE, POSITIVE, FloatLike, Floats, Interval
+from walllaw.arrays import (
+    AMOUNT,
+    AMOUNT_OR_ZERO,
+    KAPPA,
+    FloatLike,
+    Floats,
+)
 from walllaw.errors import unknown_name
 from walllaw.relation import Relation, relation
 
-_WALL_UNITS = Interval(1e-100)  # above 0, and its square a double
 _FORMS = ("k_omega", "low_re_k_omega", "stress_omega", "low_re_stress_omega")
 
 
@@ -57,7 +62,7 @@ def omega_wilcox_1988(roughness_plus: FloatLike) -> Any:
     array([100.,   1.])
     """
     c = relation("roughness", "omega_wilcox_1988")
-    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, _WALL_UNITS))
+    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, AMOUNT))
     c.use(roughness_plus=ks)
     return shape(_two_powers(c, ks, ks))
 
@@ -98,7 +103,7 @@ def omega_hellsten(roughness_plus: FloatLike, y_plus: FloatLike) -> Any:
     """
     c = relation("roughness", "omega_hellsten")
     shape, (ks, yp) = arrays.columns(
-        roughness_plus=(roughness_plus, NONNEGATIVE), y_plus=(y_plus, _WALL_UNITS)
+        roughness_plus=(roughness_plus, AMOUNT_OR_ZERO), y_plus=(y_plus, AMOUNT)
     )
     c.use(roughness_plus=ks, y_plus=yp)
     least = np.minimum(c["factor"] * np.power(yp, c["exponent"]), c["limit"])
@@ -142,7 +147,7 @@ def omega_wilcox_2006(roughness_plus: FloatLike, form: str = "k_omega") -> Any:
     if form not in _FORMS:
         raise unknown_name("form", form, _FORMS)
     c = relation("roughness", "omega_wilcox_2006")
-    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, _WALL_UNITS))
+    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, AMOUNT))
     c.use(roughness_plus=ks)
     ratio = c["low"] / ks
     square = ratio * ratio
@@ -195,9 +200,9 @@ def omega_slightly_rough(
     """
     c = relation("roughness", "omega_slightly_rough")
     shape, (ks, nu, u) = arrays.columns(
-        roughness=(roughness, POSITIVE),
-        kinematic_viscosity=(kinematic_viscosity, POSITIVE),
-        friction_velocity=(friction_velocity, NONNEGATIVE),
+        roughness=(roughness, AMOUNT),
+        kinematic_viscosity=(kinematic_viscosity, AMOUNT),
+        friction_velocity=(friction_velocity, AMOUNT_OR_ZERO),
     )
     c.use(roughness_plus=ks * u / nu)
     return shape(c["factor"] * (nu / ks / ks))
@@ -238,7 +243,7 @@ def knopp_k_wall(roughness_plus: FloatLike, beta_star: FloatLike = 0.09) -> Any:
     """
     c = relation("roughness", "knopp_k")
     shape, (ks, bs) = arrays.columns(
-        roughness_plus=(roughness_plus, NONNEGATIVE), beta_star=(beta_star, POSITIVE)
+        roughness_plus=(roughness_plus, AMOUNT_OR_ZERO), beta_star=(beta_star, AMOUNT)
     )
     c.use(roughness_plus=ks)
     return shape(np.minimum(1.0, ks / c["rough"]) / np.sqrt(bs))
@@ -276,7 +281,7 @@ def knopp_displacement(roughness_plus: FloatLike) -> Any:
     0.00632702393
     """
     c = relation("roughness", "knopp_displacement")
-    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, NONNEGATIVE))
+    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, AMOUNT_OR_ZERO))
     c.use(roughness_plus=ks)
     return shape(_knopp_share(c, ks))
 
@@ -331,11 +336,11 @@ def knopp_omega_wall(
     """
     c = relation("roughness", "knopp_omega")
     shape, (ks, yp, kap, bs, b) = arrays.columns(
-        roughness_plus=(roughness_plus, NONNEGATIVE),
-        y_plus=(y_plus, _WALL_UNITS),
+        roughness_plus=(roughness_plus, AMOUNT_OR_ZERO),
+        y_plus=(y_plus, AMOUNT),
         kappa=(kappa, KAPPA),
-        beta_star=(beta_star, POSITIVE),
-        beta=(beta, POSITIVE),
+        beta_star=(beta_star, AMOUNT),
+        beta=(beta, AMOUNT),
     )
     c.use(roughness_plus=ks, y_plus=yp)
     displacement = ks * _knopp_share(relation("roughness", "knopp_displacement"), ks)
@@ -378,6 +383,6 @@ def spalart_allmaras_displacement(roughness: FloatLike) -> Any:
     3e-05
     """
     c = relation("roughness", "spalart_allmaras_displacement")
-    shape, (ks,) = arrays.columns(roughness=(roughness, NONNEGATIVE))
+    shape, (ks,) = arrays.columns(roughness=(roughness, AMOUNT_OR_ZERO))
     c.use(roughness=ks)
     return shape(c["share"] * ks)

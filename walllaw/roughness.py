@@ -16,11 +16,11 @@ from numpy.typing import NDArray
 
 from walllaw import arrays
 from walllaw.arrays import (
-    FINITE,
+    AMOUNT,
+    AMOUNT_OR_ZERO,
     INTERCEPT,
     KAPPA,
-    NONNEGATIVE,
-    POSITIVE,
+    SIGNED,
     FloatLike,
     Floats,
     Interval,
@@ -104,7 +104,7 @@ def regime(roughness_plus: FloatLike) -> Any:
     'transitional'
     """
     c = relation("roughness", "regimes")
-    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, NONNEGATIVE))
+    shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, AMOUNT_OR_ZERO))
     c.use(roughness_plus=ks)
     index = (ks > c["smooth"]).astype(np.intp) + (ks >= c["rough"])
     names: NDArray[np.str_] = _REGIMES[index]
@@ -158,7 +158,7 @@ def fully_rough(roughness_plus: FloatLike, kappa: FloatLike = 0.41, B: FloatLike
     13.3481836073
     """
     c = relation("roughness", "fully_rough")
-    shape, (ks, kap, b) = _shift_arguments(roughness_plus, kappa, B, POSITIVE)
+    shape, (ks, kap, b) = _shift_arguments(roughness_plus, kappa, B, AMOUNT)
     c.use(roughness_plus=ks)
     return shape(_rough_line(c, ks, kap, b))
 
@@ -199,7 +199,7 @@ def ligrani_moffat(roughness_plus: FloatLike, kappa: FloatLike = 0.41, B: FloatL
     (5.1727667893, 0.0)
     """
     c = relation("roughness", "ligrani_moffat")
-    shape, (ks, kap, b) = _shift_arguments(roughness_plus, kappa, B, NONNEGATIVE)
+    shape, (ks, kap, b) = _shift_arguments(roughness_plus, kappa, B, AMOUNT_OR_ZERO)
     c.use(roughness_plus=ks)
     width = np.log(np.array([c["rough"] / c["smooth"]]))
     inside = np.clip(ks, c["smooth"], c["rough"])
@@ -243,7 +243,7 @@ def cebeci_bradshaw(roughness_plus: FloatLike, kappa: FloatLike = 0.41, B: Float
     5.1726077479
     """
     c = relation("roughness", "cebeci_bradshaw")
-    shape, (ks, kap, b) = _shift_arguments(roughness_plus, kappa, B, NONNEGATIVE)
+    shape, (ks, kap, b) = _shift_arguments(roughness_plus, kappa, B, AMOUNT_OR_ZERO)
     c.use(roughness_plus=ks)
     line = _rough_line(c, np.maximum(ks, c["smooth"]), kap, b)
     return shape(np.maximum(line * _rounded_sine(c, ks), 0.0))
@@ -295,7 +295,7 @@ def grigson(roughness_plus: FloatLike, kappa: FloatLike = 0.41, B: FloatLike = 5
     1.9125973105
     """
     c = relation("roughness", "grigson")
-    shape, (ks, kap, b) = _shift_arguments(roughness_plus, kappa, B, NONNEGATIVE)
+    shape, (ks, kap, b) = _shift_arguments(roughness_plus, kappa, B, AMOUNT_OR_ZERO)
     c.use(roughness_plus=ks)
     return shape(np.log1p(ks * np.exp(kap * (b - c["B_rough"]))) / kap)
 
@@ -341,7 +341,7 @@ def wall_function_shift(
     """
     c = relation("roughness", "wall_function_shift")
     shape, (ks, cs, kap) = arrays.columns(
-        roughness_plus=(roughness_plus, NONNEGATIVE), C_s=(C_s, POSITIVE), kappa=(kappa, KAPPA)
+        roughness_plus=(roughness_plus, AMOUNT_OR_ZERO), C_s=(C_s, AMOUNT), kappa=(kappa, KAPPA)
     )
     c.use(roughness_plus=ks)
     rise = np.clip((ks - c["smooth"]) / c["width"], 0.0, 1.0)
@@ -391,8 +391,8 @@ def intercept(
     """
     c = relation("roughness", "intercept")
     shape, (ks, du, kap, b) = arrays.columns(
-        roughness_plus=(roughness_plus, POSITIVE),
-        shift=(shift, FINITE),
+        roughness_plus=(roughness_plus, AMOUNT),
+        shift=(shift, SIGNED),
         kappa=(kappa, KAPPA),
         B=(B, INTERCEPT),
     )

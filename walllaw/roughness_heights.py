@@ -10,7 +10,14 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import INTERCEPT, KAPPA, NONNEGATIVE, POSITIVE, FloatLike, Interval
+from walllaw.arrays import (
+    AMOUNT,
+    AMOUNT_OR_ZERO,
+    INTERCEPT,
+    KAPPA,
+    FloatLike,
+    Interval,
+)
 from walllaw.relation import relation
 
 
@@ -90,7 +97,7 @@ def equivalent_roughness(
     """
     c = relation("roughness", "equivalent_roughness")
     shape, (k, cs, kap, b) = arrays.columns(
-        height=(height, NONNEGATIVE), C_s=(C_s, POSITIVE), kappa=(kappa, KAPPA), B=(B, INTERCEPT)
+        height=(height, AMOUNT_OR_ZERO), C_s=(C_s, AMOUNT), kappa=(kappa, KAPPA), B=(B, INTERCEPT)
     )
     c.use(height=k, C_s=cs)
     return shape(k * cs * np.exp(kap * (c["B_rough"] - b)))
@@ -130,7 +137,7 @@ def aerodynamic_roughness(roughness: FloatLike, kappa: FloatLike = 0.41) -> Any:
     0.03337327
     """
     c = relation("roughness", "aerodynamic")
-    shape, (ks, kap) = arrays.columns(roughness=(roughness, NONNEGATIVE), kappa=(kappa, KAPPA))
+    shape, (ks, kap) = arrays.columns(roughness=(roughness, AMOUNT_OR_ZERO), kappa=(kappa, KAPPA))
     c.use(roughness=ks)
     return shape(ks * np.exp(-c["B_rough"] * kap))
 
@@ -171,7 +178,7 @@ def from_aerodynamic(aerodynamic_roughness: FloatLike, kappa: FloatLike = 0.41) 
     """
     c = relation("roughness", "aerodynamic")
     shape, (z0, kap) = arrays.columns(
-        aerodynamic_roughness=(aerodynamic_roughness, NONNEGATIVE), kappa=(kappa, KAPPA)
+        aerodynamic_roughness=(aerodynamic_roughness, AMOUNT_OR_ZERO), kappa=(kappa, KAPPA)
     )
     c.use(aerodynamic_roughness=z0)
     return shape(z0 * np.exp(c["B_rough"] * kap))
@@ -220,8 +227,8 @@ def wall_function_height(
     """
     c = relation("roughness", "aerodynamic_wall_function")
     shape, (z0, cs, kap, b) = arrays.columns(
-        aerodynamic_roughness=(aerodynamic_roughness, NONNEGATIVE),
-        C_s=(C_s, POSITIVE),
+        aerodynamic_roughness=(aerodynamic_roughness, AMOUNT_OR_ZERO),
+        C_s=(C_s, AMOUNT),
         kappa=(kappa, KAPPA),
         B=(B, INTERCEPT),
     )
@@ -264,7 +271,8 @@ def flack_schultz(rms_height: FloatLike, skewness: FloatLike) -> Any:
     """
     c = relation("roughness", "flack_schultz")
     shape, (rms, skew) = arrays.columns(
-        rms_height=(rms_height, NONNEGATIVE), skewness=(skewness, Interval(-1.0, open_low=True))
+        rms_height=(rms_height, AMOUNT_OR_ZERO),
+        skewness=(skewness, Interval(-1.0, 1e6, open_low=True)),
     )
     c.use(rms_height=rms, skewness=skew)
     return shape(c["factor"] * rms * np.power(1.0 + skew, c["exponent"]))

@@ -10,7 +10,11 @@ from __future__ import annotations
 from typing import Any
 
 from walllaw import arrays
-from walllaw.arrays import POSITIVE, FloatLike, Interval
+from walllaw.arrays import (
+    AMOUNT,
+    FloatLike,
+    Interval,
+)
 from walllaw.geometric_layers import (
     finite,
     out_of_reach,
@@ -38,8 +42,8 @@ __all__ = [
     "y_plus",
 ]
 
-_COUNT = Interval(1.0)
-_SEVERAL = Interval(2.0)
+_COUNT = Interval(1.0, 1e12)
+_SEVERAL = Interval(2.0, 1e12)
 
 
 def first_cell_centre(
@@ -81,9 +85,9 @@ def first_cell_centre(
     """
     c = relation("flow", "first_cell_centre")
     shape, (y, u, nu) = arrays.columns(
-        y_plus=(y_plus, POSITIVE),
-        friction_velocity=(friction_velocity, POSITIVE),
-        kinematic_viscosity=(kinematic_viscosity, POSITIVE),
+        y_plus=(y_plus, AMOUNT),
+        friction_velocity=(friction_velocity, AMOUNT),
+        kinematic_viscosity=(kinematic_viscosity, AMOUNT),
     )
     c.use(y_plus=y, friction_velocity=u, kinematic_viscosity=nu)
     return shape(finite("y_plus", y * nu / u))
@@ -128,9 +132,9 @@ def first_cell_height(
     """
     c = relation("flow", "first_cell_height")
     shape, (y, u, nu) = arrays.columns(
-        y_plus=(y_plus, POSITIVE),
-        friction_velocity=(friction_velocity, POSITIVE),
-        kinematic_viscosity=(kinematic_viscosity, POSITIVE),
+        y_plus=(y_plus, AMOUNT),
+        friction_velocity=(friction_velocity, AMOUNT),
+        kinematic_viscosity=(kinematic_viscosity, AMOUNT),
     )
     c.use(y_plus=y, friction_velocity=u, kinematic_viscosity=nu)
     return shape(finite("y_plus", 2.0 * (y * nu / u)))
@@ -175,9 +179,9 @@ def y_plus(
     """
     c = relation("flow", "y_plus")
     shape, (y, u, nu) = arrays.columns(
-        distance=(distance, POSITIVE),
-        friction_velocity=(friction_velocity, POSITIVE),
-        kinematic_viscosity=(kinematic_viscosity, POSITIVE),
+        distance=(distance, AMOUNT),
+        friction_velocity=(friction_velocity, AMOUNT),
+        kinematic_viscosity=(kinematic_viscosity, AMOUNT),
     )
     c.use(distance=y, friction_velocity=u, kinematic_viscosity=nu)
     return shape(finite("distance", y * u / nu))
@@ -224,7 +228,7 @@ def layer_total(first: FloatLike, growth: FloatLike, count: FloatLike) -> Any:
     """
     c = relation("spacing", "total")
     shape, (h, g, n) = arrays.columns(
-        first=(first, POSITIVE), growth=(growth, POSITIVE), count=(count, _COUNT)
+        first=(first, AMOUNT), growth=(growth, AMOUNT), count=(count, _COUNT)
     )
     c.use(first=h, growth=g, count=n)
     return shape(arrays.blocks(stack_total, h, g, n))
@@ -267,7 +271,7 @@ def layer_last(first: FloatLike, growth: FloatLike, count: FloatLike) -> Any:
     """
     c = relation("spacing", "last")
     shape, (h, g, n) = arrays.columns(
-        first=(first, POSITIVE), growth=(growth, POSITIVE), count=(count, _COUNT)
+        first=(first, AMOUNT), growth=(growth, AMOUNT), count=(count, _COUNT)
     )
     c.use(first=h, growth=g, count=n)
     return shape(arrays.blocks(stack_last, h, g, n))
@@ -310,7 +314,7 @@ def layer_first(total: FloatLike, growth: FloatLike, count: FloatLike) -> Any:
     """
     c = relation("spacing", "first")
     shape, (t, g, n) = arrays.columns(
-        total=(total, POSITIVE), growth=(growth, POSITIVE), count=(count, _COUNT)
+        total=(total, AMOUNT), growth=(growth, AMOUNT), count=(count, _COUNT)
     )
     c.use(total=t, growth=g, count=n)
     return shape(arrays.blocks(stack_first, t, g, n))
@@ -353,7 +357,7 @@ def layer_count(first: FloatLike, growth: FloatLike, total: FloatLike) -> Any:
     """
     c = relation("spacing", "count")
     shape, (h, g, t) = arrays.columns(
-        first=(first, POSITIVE), growth=(growth, POSITIVE), total=(total, POSITIVE)
+        first=(first, AMOUNT), growth=(growth, AMOUNT), total=(total, AMOUNT)
     )
     c.use(first=h, growth=g, total=t)
     refuse("total", t, t < h, "at least the height of the first layer")
@@ -402,7 +406,7 @@ def layer_growth(first: FloatLike, total: FloatLike, count: FloatLike) -> Any:
     """
     c = relation("spacing", "growth")
     shape, (h, t, n) = arrays.columns(
-        first=(first, POSITIVE), total=(total, POSITIVE), count=(count, _SEVERAL)
+        first=(first, AMOUNT), total=(total, AMOUNT), count=(count, _SEVERAL)
     )
     c.use(first=h, total=t, count=n)
     refuse("total", t, t <= h, "a height above that of the first layer")

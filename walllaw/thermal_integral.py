@@ -12,7 +12,13 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import KAPPA, POSITIVE, FloatLike, Floats, Interval
+from walllaw.arrays import (
+    AMOUNT,
+    KAPPA,
+    FloatLike,
+    Floats,
+    Interval,
+)
 from walllaw.relation import relation
 
 # equal panels of the stretched coordinate and Gauss points in each: 20 panels are enough for a
@@ -80,11 +86,11 @@ def integrated(
         y_plus=(y_plus, Interval(0.0, 1e12)),
         prandtl=(prandtl, Interval(1e-6, 1e8)),
         kappa=(kappa, KAPPA),
-        A_plus=(A_plus, POSITIVE),
+        A_plus=(A_plus, AMOUNT),
     )
     c.use(y_plus=y, prandtl=pr)
     if not callable(turbulent_prandtl):
-        arrays.check("turbulent_prandtl", turbulent_prandtl, POSITIVE)
+        arrays.check("turbulent_prandtl", turbulent_prandtl, AMOUNT)
 
     def kernel(y: Floats, pr: Floats, kap: Floats, a: Floats) -> Floats:
         return _integral(y, pr, kap, a, turbulent_prandtl)

@@ -10,7 +10,15 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import INTERCEPT, KAPPA, NONNEGATIVE, POSITIVE, FloatLike, Floats, Interval
+from walllaw.arrays import (
+    AMOUNT,
+    AMOUNT_OR_ZERO,
+    INTERCEPT,
+    KAPPA,
+    FloatLike,
+    Floats,
+    Interval,
+)
 from walllaw.errors import InputError, unknown_name
 from walllaw.lambert import wright_omega_lower
 from walllaw.relation import Relation, relation
@@ -130,7 +138,7 @@ def jayatilleke_resistance(prandtl: FloatLike, turbulent_prandtl: FloatLike = 0.
     """
     c = relation("heat", "jayatilleke")
     shape, (pr, prt) = arrays.columns(
-        prandtl=(prandtl, _PRANDTL), turbulent_prandtl=(turbulent_prandtl, POSITIVE)
+        prandtl=(prandtl, _PRANDTL), turbulent_prandtl=(turbulent_prandtl, AMOUNT)
     )
     c.use(prandtl=pr, turbulent_prandtl=prt)
     return shape(_resistance(c, pr / prt))
@@ -191,7 +199,7 @@ def _law_arguments(
 ) -> tuple[arrays.Shape, list[Floats]]:
     return arrays.columns(
         prandtl=(prandtl, _PRANDTL),
-        turbulent_prandtl=(turbulent_prandtl, POSITIVE),
+        turbulent_prandtl=(turbulent_prandtl, AMOUNT),
         kappa=(kappa, KAPPA),
         B=(B, INTERCEPT),
         **more,
@@ -254,7 +262,7 @@ def jayatilleke(
     """
     c = relation("heat", "jayatilleke_law")
     shape, (pr, prt, kap, b, y) = _law_arguments(
-        prandtl, turbulent_prandtl, kappa, B, y_plus=(y_plus, NONNEGATIVE)
+        prandtl, turbulent_prandtl, kappa, B, y_plus=(y_plus, AMOUNT_OR_ZERO)
     )
     c.use(prandtl=pr, y_plus=y)
     crossing = _crossing(pr, prt, kap, b)
@@ -310,7 +318,7 @@ def two_layer(
     """
     c = relation("heat", "two_layer")
     shape, (pr, prt, kap, b, y) = _law_arguments(
-        prandtl, turbulent_prandtl, kappa, B, y_plus=(y_plus, NONNEGATIVE)
+        prandtl, turbulent_prandtl, kappa, B, y_plus=(y_plus, AMOUNT_OR_ZERO)
     )
     c.use(prandtl=pr, y_plus=y)
     s = kap * b - np.log(kap)

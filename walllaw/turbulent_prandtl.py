@@ -11,7 +11,12 @@ from typing import Any
 import numpy as np
 
 from walllaw import arrays
-from walllaw.arrays import NONNEGATIVE, POSITIVE, FloatLike, Floats
+from walllaw.arrays import (
+    AMOUNT,
+    AMOUNT_OR_ZERO,
+    FloatLike,
+    Floats,
+)
 from walllaw.relation import relation
 
 _TERMS = 18  # of the series of _relaxation below t = 1; the next one is 1/20!, below rounding
@@ -57,9 +62,9 @@ def kays_crawford(viscosity_ratio: FloatLike, prandtl: FloatLike, far: FloatLike
     """
     c = relation("heat", "kays_crawford")
     shape, (ratio, pr, p) = arrays.columns(
-        viscosity_ratio=(viscosity_ratio, NONNEGATIVE),
-        prandtl=(prandtl, POSITIVE),
-        far=(far, POSITIVE),
+        viscosity_ratio=(viscosity_ratio, AMOUNT_OR_ZERO),
+        prandtl=(prandtl, AMOUNT),
+        far=(far, AMOUNT),
     )
     c.use(viscosity_ratio=ratio, prandtl=pr)
     return shape(arrays.blocks(_kays_crawford, pr * ratio, p))
@@ -122,10 +127,10 @@ def weigand(
     """
     c = relation("heat", "weigand")
     shape, (ratio, pr, re, p) = arrays.columns(
-        viscosity_ratio=(viscosity_ratio, NONNEGATIVE),
-        prandtl=(prandtl, POSITIVE),
-        reynolds=(reynolds, POSITIVE),
-        far=(far, POSITIVE),
+        viscosity_ratio=(viscosity_ratio, AMOUNT_OR_ZERO),
+        prandtl=(prandtl, AMOUNT),
+        reynolds=(reynolds, AMOUNT),
+        far=(far, AMOUNT),
     )
     c.use(viscosity_ratio=ratio, prandtl=pr, reynolds=re)
     limit = p + c["factor"] / (pr * np.power(re, c["exponent"]))
@@ -169,7 +174,7 @@ def kays(viscosity_ratio: FloatLike, prandtl: FloatLike, *, liquid_metal: bool =
     """
     c = relation("heat", "kays")
     shape, (ratio, pr) = arrays.columns(
-        viscosity_ratio=(viscosity_ratio, POSITIVE), prandtl=(prandtl, POSITIVE)
+        viscosity_ratio=(viscosity_ratio, AMOUNT), prandtl=(prandtl, AMOUNT)
     )
     c.use(viscosity_ratio=ratio, prandtl=pr)
     factor = c["liquid_metal"] if liquid_metal else c["fluid"]
@@ -212,7 +217,7 @@ def reynolds_mean(reynolds: FloatLike, prandtl: FloatLike) -> Any:
     """
     c = relation("heat", "reynolds")
     shape, (re, pr) = arrays.columns(
-        reynolds=(reynolds, arrays.Interval(1e3)), prandtl=(prandtl, POSITIVE)
+        reynolds=(reynolds, arrays.Interval(1e3, 1e30)), prandtl=(prandtl, AMOUNT)
     )
     c.use(reynolds=re, prandtl=pr)
     molecular = 1.0 + c["peclet"] / np.sqrt(pr * re)
@@ -253,6 +258,6 @@ def jischa_rieke(reynolds: FloatLike, prandtl: FloatLike) -> Any:
     1.1649
     """
     c = relation("heat", "jischa_rieke")
-    shape, (re, pr) = arrays.columns(reynolds=(reynolds, POSITIVE), prandtl=(prandtl, POSITIVE))
+    shape, (re, pr) = arrays.columns(reynolds=(reynolds, AMOUNT), prandtl=(prandtl, AMOUNT))
     c.use(reynolds=re, prandtl=pr)
     return shape(c["far"] + c["factor"] / (pr * np.power(re, c["exponent"])))

@@ -13,7 +13,16 @@ import numpy as np
 from numpy.typing import NDArray
 
 from walllaw import arrays
-from walllaw.arrays import FINITE, INTERCEPT, KAPPA, NONNEGATIVE, POSITIVE, FloatLike, Floats, Shape
+from walllaw.arrays import (
+    AMOUNT,
+    AMOUNT_OR_ZERO,
+    FINITE,
+    INTERCEPT,
+    KAPPA,
+    FloatLike,
+    Floats,
+    Shape,
+)
 from walllaw.errors import InputError, unknown_name
 from walllaw.lambert import wright_omega, wright_omega_lower
 from walllaw.near_wall_omega import blend, omega_blended, omega_log, omega_viscous, omega_wall
@@ -172,9 +181,9 @@ def friction_velocity(
     """
     c = relation("wall_function", "friction_velocity")
     shape, (u, y, nu, *law) = arrays.columns(
-        velocity=(velocity, NONNEGATIVE),
-        distance=(distance, POSITIVE),
-        kinematic_viscosity=(kinematic_viscosity, POSITIVE),
+        velocity=(velocity, AMOUNT_OR_ZERO),
+        distance=(distance, AMOUNT),
+        kinematic_viscosity=(kinematic_viscosity, AMOUNT),
         **_log_law(kappa, B, E),
     )
     u_tau, _ = _log_or_viscous(u, y, nu, law[0], _ln_E(*law, factor=E is not None))
@@ -239,10 +248,10 @@ def from_velocity(
     """
     c = relation("wall_function", "friction_velocity")
     shape, (u, y, nu, cmu, *law) = arrays.columns(
-        velocity=(velocity, POSITIVE),
-        distance=(distance, POSITIVE),
-        kinematic_viscosity=(kinematic_viscosity, POSITIVE),
-        C_mu=(C_mu, POSITIVE),
+        velocity=(velocity, AMOUNT),
+        distance=(distance, AMOUNT),
+        kinematic_viscosity=(kinematic_viscosity, AMOUNT),
+        C_mu=(C_mu, AMOUNT),
         **_log_law(kappa, B, E),
     )
     kap, ln_E = law[0], _ln_E(*law, factor=E is not None)
@@ -319,11 +328,11 @@ def from_k(
         raise unknown_name("sublayer", sublayer, _SUBLAYERS)
     c = relation("wall_function", "launder_spalding")
     shape, (u, k_p, y, nu, cmu, *law) = arrays.columns(
-        velocity=(velocity, NONNEGATIVE),
-        k=(k, POSITIVE),
-        distance=(distance, POSITIVE),
-        kinematic_viscosity=(kinematic_viscosity, POSITIVE),
-        C_mu=(C_mu, POSITIVE),
+        velocity=(velocity, AMOUNT_OR_ZERO),
+        k=(k, AMOUNT),
+        distance=(distance, AMOUNT),
+        kinematic_viscosity=(kinematic_viscosity, AMOUNT),
+        C_mu=(C_mu, AMOUNT),
         **_log_law(kappa, B, E),
     )
     kap, ln_E = law[0], _ln_E(*law, factor=E is not None)
@@ -336,7 +345,8 @@ def from_k(
     u_plus = (np.log(limited) + ln_E) / kap
     if sublayer == "scalable":
         relation("wall_function", "scalable").use(y_plus=y_star)
-        cell = _Cell(y, nu, cmu, kap, k_p, u_k, y_star, u_plus, limited * nu / u_k)
+        log_distance = np.where(above, y, crossing * nu / u_k)
+        cell = _Cell(y, nu, cmu, kap, k_p, u_k, y_star, u_plus, log_distance)
         return _cell(shape, cell, u, above, np.ones_like(above))
     u_plus = np.where(above, u_plus, y_star)
     return _cell(shape, _Cell(y, nu, cmu, kap, k_p, u_k, y_star, u_plus, y), u, above, above)
@@ -401,7 +411,7 @@ def _log_law(kappa: FloatLike, B: FloatLike | None, E: FloatLike | None) -> dict
     if B is not None and E is not None:
         raise InputError("E", "both B and E", "one of them, E = exp(kappa B)")
     if E is not None:
-        return {"kappa": (kappa, KAPPA), "E": (E, POSITIVE)}
+        return {"kappa": (kappa, KAPPA), "E": (E, AMOUNT)}
     return {"kappa": (kappa, KAPPA), "B": (5.0 if B is None else B, INTERCEPT)}
 
 

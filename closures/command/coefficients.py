@@ -48,11 +48,18 @@ def list_(family: str | None, form: str, output: str) -> int:
     if form == "json":
         emit(json.dumps([{n: h[n] for n in columns} for h in heads], indent=2), output)
         return 0
-    rows = [(h["id"], h["family"], " ".join(h["variables"]) or "-", h["status"], h["name"]) for h in heads]
+    rows = [
+        (h["id"], h["family"], " ".join(h["variables"]) or "-", h["status"], h["name"])
+        for h in heads
+    ]
     if form == "csv":
         lines = [",".join(columns), *(",".join(f'"{c}"' for c in row) for row in rows)]
     elif form == "markdown":
-        lines = [f"| {' | '.join(columns)} |", "|---|---|---|---|---|", *(f"| {' | '.join(r)} |" for r in rows)]
+        lines = [
+            f"| {' | '.join(columns)} |",
+            "|---|---|---|---|---|",
+            *(f"| {' | '.join(r)} |" for r in rows),
+        ]
     else:
         short = [(i, f, v.replace("reynolds_stresses", "stresses")) for i, f, v, _, _ in rows]
         lines = [f"{i:<31}{f:<26}{v}".rstrip() for i, f, v in short]
@@ -74,17 +81,18 @@ def show(name: str, form: str, output: str) -> int:
 
 
 def _coefficient_rows(c: Closure) -> list[tuple[str, str, str, str, str]]:
-    return [
-        (n, f"{k.value:.9g}", k.printed, k.status, k.note)
-        for n, k in c.coefficients.items()
-    ]
+    return [(n, f"{k.value:.9g}", k.printed, k.status, k.note) for n, k in c.coefficients.items()]
 
 
 def _json(c: Closure) -> str:
     coefficients: dict[str, Any] = {
         n: {
             "value": k.value,
-            **{f: getattr(k, f) for f in ("source", "status", "read_in", "expression", "note") if getattr(k, f)},
+            **{
+                f: getattr(k, f)
+                for f in ("source", "status", "read_in", "expression", "note")
+                if getattr(k, f)
+            },
         }
         for n, k in c.coefficients.items()
     }
@@ -92,17 +100,22 @@ def _json(c: Closure) -> str:
         "id": c.id, "name": c.name, "family": c.family, "variables": list(c.variables),
         "source": c.source, "status": c.status, "summary": c.summary, "evidence": c.evidence,
         "sigma_convention": c.sigma_convention, "coefficients": coefficients,
-        "functions": c.functions, "algebra": c.algebra, "wall": c.wall, "free_stream": c.free_stream,
+        "functions": c.functions, "algebra": c.algebra, "wall": c.wall,
+        "free_stream": c.free_stream,
         "misprints": list(c.misprints), "use": c.use,
     }  # fmt: skip
-    return json.dumps({k: v for k, v in data.items() if v}, indent=2, ensure_ascii=False, allow_nan=False)
+    return json.dumps(
+        {k: v for k, v in data.items() if v}, indent=2, ensure_ascii=False, allow_nan=False
+    )
 
 
 def _rules(c: Closure) -> list[str]:
     lines = [f"{n} = {f['formula']}" for n, f in c.functions.items()]
     for part in ("conditions", "rough"):
-        for n, f in c.wall.get(part, {}).items():
-            lines.append(f"wall, {part}: {n}: {f['rule']} {f.get('formula', '')}".rstrip())
+        lines += [
+            f"wall, {part}: {n}: {f['rule']} {f.get('formula', '')}".rstrip()
+            for n, f in c.wall.get(part, {}).items()
+        ]
     for row in c.free_stream.get("recommendations", []):
         lines.append(f"free stream: {row['formula']} [{row['source']}]")
     lines += [f"misprint: {text}" for text in c.misprints]
@@ -117,14 +130,20 @@ def _text(c: Closure) -> str:
     def wrap(text: str) -> list[str]:
         return textwrap.wrap(text, 78, initial_indent="  ", subsequent_indent="    ") or []
 
-    lines = [f"{c.id}: {c.name}", *wrap(c.summary), f"  family {c.family}; variables {' '.join(c.variables) or '-'}"]
+    lines = [
+        f"{c.id}: {c.name}",
+        *wrap(c.summary),
+        f"  family {c.family}; variables {' '.join(c.variables) or '-'}",
+    ]
     if c.sigma_convention:
         lines.append(f"  sigma is a {c.sigma_convention} of the eddy viscosity")
     lines.append("coefficients")
     for n, value, printed, status, note in _coefficient_rows(c):
         lines.append(f"  {n:<20} {value:>14}   {status}")
         if "/" in printed or "*" in printed:
-            lines += textwrap.wrap(f"= {printed}", 78, initial_indent=" " * 24, subsequent_indent=" " * 26)
+            lines += textwrap.wrap(
+                f"= {printed}", 78, initial_indent=" " * 24, subsequent_indent=" " * 26
+            )
         if note:
             lines += textwrap.wrap(note, 78, initial_indent=" " * 24, subsequent_indent=" " * 24)
     lines.append("rules")
@@ -139,7 +158,17 @@ def _text(c: Closure) -> str:
 def _markdown(c: Closure) -> str:
     from closures.citations import citation
 
-    head = [f"# {c.id}", "", c.name, "", "| coefficient | value | as printed | status | note |", "|---|---:|---|---|---|"]
-    rows = [f"| {' | '.join(cell.replace('|', chr(92) + '|') for cell in row)} |" for row in _coefficient_rows(c)]
+    head = [
+        f"# {c.id}",
+        "",
+        c.name,
+        "",
+        "| coefficient | value | as printed | status | note |",
+        "|---|---:|---|---|---|",
+    ]
+    rows = [
+        f"| {' | '.join(cell.replace('|', chr(92) + '|') for cell in row)} |"
+        for row in _coefficient_rows(c)
+    ]
     rules = ["", *(f"- {row}" for row in _rules(c)), "", f"Source: {citation(c.source)}"]
     return "\n".join([*head, *rows, *rules])

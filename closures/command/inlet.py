@@ -30,19 +30,28 @@ _NUMBERS = {
     "integral_length": "longitudinal integral length",
 }
 _FLUID = ("temperature", "pressure")
-_ALWAYS = ("k", "epsilon", "omega", "nu_t", "viscosity_ratio", "mixing_length", "eddy_viscosity_length",
+_ALWAYS = ("k", "epsilon", "omega", "nu_t", "viscosity_ratio", "mixing_length",
+           "eddy_viscosity_length",
            "dissipation_length", "integral_length")  # fmt: skip
 
 
 def _options(function: Any) -> Any:
     for name, words in reversed(_NUMBERS.items()):
-        function = click.option(f"--{name.replace('_', '-')}", name, metavar="QUANTITY", help=words)(function)
+        function = click.option(
+            f"--{name.replace('_', '-')}", name, metavar="QUANTITY", help=words
+        )(function)
     return function
 
 
 @click.command()
-@click.option("--closure", "name", default="all", show_default=True, metavar="ID",
-              help="Id, alias or path of a closure; all for every one.")
+@click.option(
+    "--closure",
+    "name",
+    default="all",
+    show_default=True,
+    metavar="ID",
+    help="Id, alias or path of a closure; all for every one.",
+)
 @click.option("--fluid", metavar="NAME", help="air, water, or a fluid of the property library.")
 @_options
 @output_options("text", "json", "csv", "markdown")
@@ -89,19 +98,29 @@ def _every(numbers: dict[str, float]) -> list[str]:
         head["id"]
         for head in closure_heads()
         if head["variables"]
-        and not ({"nu_tilde", "R"} & set(head["variables"]) and "kinematic_viscosity" not in numbers)
+        and not (
+            {"nu_tilde", "R"} & set(head["variables"]) and "kinematic_viscosity" not in numbers
+        )
         and not ("re_theta_t" in head["variables"] and "velocity" not in numbers)
     ]
 
 
 def _record(inlet: Inlet) -> dict[str, Any]:
     c = inlet.closure
-    state = {} if inlet.state is None else {
-        n: getattr(inlet.state, n) for n in _ALWAYS if n in inlet.state.available()
-    }
+    state = (
+        {}
+        if inlet.state is None
+        else {n: getattr(inlet.state, n) for n in _ALWAYS if n in inlet.state.available()}
+    )
     values = {**state, **{n: getattr(inlet, n) for n in inlet.values}}
     return {
-        "closure": {"id": c.id, "name": c.name, "family": c.family, "source": c.source, "C_mu": c.C_mu},
+        "closure": {
+            "id": c.id,
+            "name": c.name,
+            "family": c.family,
+            "source": c.source,
+            "C_mu": c.C_mu,
+        },
         "inlet": {**values, "set": inlet.set},
         "assumptions": list(inlet.notes),
     }
@@ -156,4 +175,6 @@ def _csv(found: list[Inlet]) -> str:
 
 def _markdown(found: list[Inlet]) -> str:
     head = ["| closure | quantity | value | unit |", "|---|---|---:|---|"]
-    return "\n".join(head + [f"| {c} | {n} | {float(v):.6g} | {u} |" for c, n, v, u in _rows(found)])
+    return "\n".join(
+        head + [f"| {c} | {n} | {float(v):.6g} | {u} |" for c, n, v, u in _rows(found)]
+    )

@@ -15,10 +15,18 @@ def output_options(*formats: str) -> Decorator:
 
     def decorate(function: Callable[..., Any]) -> Callable[..., Any]:
         function = click.option(
-            "--output", "-o", default="-", metavar="FILE", help="File to write; - for standard output."
+            "--output",
+            "-o",
+            default="-",
+            metavar="FILE",
+            help="File to write; - for standard output.",
         )(function)
         return click.option(
-            "--format", "form", type=click.Choice(formats), default=formats[0], show_default=True,
+            "--format",
+            "form",
+            type=click.Choice(formats),
+            default=formats[0],
+            show_default=True,
             help="Form of the output.",
         )(function)
 

@@ -13,7 +13,9 @@ from closures.command.options import output_options
 @click.argument("case", required=False)
 @output_options("text", "json", "markdown")
 @click.option("--strict", is_flag=True, help="Exit with 1 on a warning too, not only on an error.")
-@click.option("--schema", type=click.Choice(["case", "sheet"]), help="Print a JSON Schema and leave.")
+@click.option(
+    "--schema", type=click.Choice(["case", "sheet"]), help="Print a JSON Schema and leave."
+)
 def command(case: str | None, form: str, output: str, strict: bool, schema: str | None) -> int:
     """Evaluate the case file CASE (- for standard input), review it, print the sheet."""
     from closures.files import emit

@@ -13,8 +13,14 @@ from closures.command.options import output_options
 
 @click.command()
 @case_options("fluid", "flow", "wall")
-@click.option("--closure", "closure_name", default="menter-sst-2003", show_default=True, metavar="ID",
-              help="Id, alias or path of a closure.")
+@click.option(
+    "--closure",
+    "closure_name",
+    default="menter-sst-2003",
+    show_default=True,
+    metavar="ID",
+    help="Id, alias or path of a closure.",
+)
 @output_options("text", "json", "markdown")
 def command(closure_name: str, form: str, output: str, **given: Any) -> int:
     """The wall of a stated flow: u_tau, first cell, layer stack, values at the wall."""

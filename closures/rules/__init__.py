@@ -64,7 +64,17 @@ class Finding:
 
     def as_dict(self) -> dict[str, Any]:
         """Return what the sheet's JSON holds; what does not apply is absent."""
-        names = ("id", "severity", "quantity", "value", "limit", "message", "why", "action", "source")
+        names = (
+            "id",
+            "severity",
+            "quantity",
+            "value",
+            "limit",
+            "message",
+            "why",
+            "action",
+            "source",
+        )
         rows = {name: getattr(self, name) for name in names}
         return {name: value for name, value in rows.items() if value not in (None, "")}
 
@@ -80,12 +90,19 @@ def rules() -> tuple[Rule, ...]:
     """
     found = []
     for id_, row in tables.read("rules.toml").items():
-        if set(row) - _KEYS or not {"module", "severity", "title", "message", "why", "action",
-                                    "source"} <= set(row):
+        if set(row) - _KEYS or not {
+            "module",
+            "severity",
+            "title",
+            "message",
+            "why",
+            "action",
+            "source",
+        } <= set(row):
             raise TableError(f"rules.toml: {id_}: needs {', '.join(sorted(_KEYS))}")
         if row["severity"] not in SEVERITIES:
             raise TableError(f"rules.toml: {id_}: severity is none of {', '.join(SEVERITIES)}")
-        if row["source"] != "common practice" and row["source"] not in tables.sources():
+        if row["source"] != "common practice" and not tables.known_source(row["source"]):
             raise TableError(f"rules.toml: {id_}: unknown source {row['source']!r}")
         module = import_module(f"closures.rules.{row['module']}")
         check = getattr(module, id_.replace("-", "_"), None)

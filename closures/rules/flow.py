@@ -52,9 +52,10 @@ def compressible(e: Ledger) -> Iterator[Hit]:
 
 def pipe_law_on_other_passage(e: Ledger) -> Iterator[Hit]:
     """A pipe friction law is given the plain hydraulic diameter of another passage."""
-    if e.texts.get("flow.kind") in ("channel", "duct", "annulus") and e.texts.get(
-        "flow.friction_diameter"
-    ) == "hydraulic":
+    if (
+        e.texts.get("flow.kind") in ("channel", "duct", "annulus")
+        and e.texts.get("flow.friction_diameter") == "hydraulic"
+    ):
         turbulent = ~e.is_label("flow.regime", "laminar")
         other = e["flow.darcy_friction_laminar_equivalent"]
         change = 100.0 * (other / e["flow.darcy_friction"] - 1.0)

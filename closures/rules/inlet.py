@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from closures.ledger import Ledger
+from closures.ledger import Ledger, Mask
 from closures.rules import Hit
 from closures.rules.flow import INTERNAL
 from walllaw.relation import relation
@@ -22,16 +22,24 @@ def intensity_high(e: Ledger) -> Iterator[Hit]:
     """k = 1.5 (Tu U)^2 loses its meaning."""
     if "inlet.intensity" in e:
         limit = relation("review", "intensity")["high"]
-        yield Hit(e["inlet.intensity"] > limit, "inlet.intensity", limit,
-                  {"percent": 100.0 * e["inlet.intensity"]})
+        yield Hit(
+            e["inlet.intensity"] > limit,
+            "inlet.intensity",
+            limit,
+            {"percent": 100.0 * e["inlet.intensity"]},
+        )
 
 
 def intensity_low(e: Ledger) -> Iterator[Hit]:
     """Below what any facility has."""
     if "inlet.intensity" in e:
         limit = relation("review", "intensity")["low"]
-        yield Hit(e["inlet.intensity"] < limit, "inlet.intensity", limit,
-                  {"percent": 100.0 * e["inlet.intensity"]})
+        yield Hit(
+            e["inlet.intensity"] < limit,
+            "inlet.intensity",
+            limit,
+            {"percent": 100.0 * e["inlet.intensity"]},
+        )
 
 
 def viscosity_ratio_free_stream_high(e: Ledger) -> Iterator[Hit]:
@@ -62,8 +70,12 @@ def viscosity_ratio_low_inside(e: Ledger) -> Iterator[Hit]:
         rows = (e["inlet.viscosity_ratio"] < r["viscosity_ratio"]) & (
             e["inlet.intensity"] > r["intensity"]
         )
-        yield Hit(rows, "inlet.viscosity_ratio", r["viscosity_ratio"],
-                  {"length": e["inlet.mixing_length"]})
+        yield Hit(
+            rows,
+            "inlet.viscosity_ratio",
+            r["viscosity_ratio"],
+            {"length": e["inlet.mixing_length"]},
+        )
 
 
 def length_above_developed(e: Ledger) -> Iterator[Hit]:
@@ -76,7 +88,7 @@ def length_above_developed(e: Ledger) -> Iterator[Hit]:
         yield Hit(rows, "inlet.mixing_length", limit, {"share": e["inlet.mixing_length"] / passage})
 
 
-def _exceeds(e: Ledger):  # type: ignore[no-untyped-def]
+def _exceeds(e: Ledger) -> Mask:
     r = relation("review", "passage_length")
     return (e["inlet.mixing_length"] > r["refuse"] * e["flow.passage"]) | (
         e["inlet.integral_length"] > 0.5 * e["flow.passage"]
@@ -100,8 +112,12 @@ def pipe_length_in_gap(e: Ledger) -> Iterator[Hit]:
 def no_inertial_range(e: Ledger) -> Iterator[Hit]:
     """The viscosity ratio is below one: a length has no meaning as a size of eddies."""
     if "inlet.viscosity_ratio" in e and "scales.re_lambda" in e:
-        yield Hit(e["inlet.viscosity_ratio"] < 1.0, "inlet.viscosity_ratio", 1.0,
-                  {"re_lambda": e["scales.re_lambda"]})
+        yield Hit(
+            e["inlet.viscosity_ratio"] < 1.0,
+            "inlet.viscosity_ratio",
+            1.0,
+            {"re_lambda": e["scales.re_lambda"]},
+        )
 
 
 def spalart_allmaras_free_stream(e: Ledger) -> Iterator[Hit]:
@@ -109,8 +125,12 @@ def spalart_allmaras_free_stream(e: Ledger) -> Iterator[Hit]:
     if _outside(e) and "inlet.set.nu_tilde" in e and "closure.c_v1" in e:
         chi = e["inlet.set.nu_tilde"] / e["fluid.kinematic_viscosity"]
         r = relation("review", "spalart_allmaras_free_stream")
-        yield Hit((chi < r["low"]) | (chi > r["high"]), "inlet.set.nu_tilde", None,
-                  {"chi": chi, "low": r["low"], "high": r["high"]})
+        yield Hit(
+            (chi < r["low"]) | (chi > r["high"]),
+            "inlet.set.nu_tilde",
+            None,
+            {"chi": chi, "low": r["low"], "high": r["high"]},
+        )
 
 
 def omega_free_stream(e: Ledger) -> Iterator[Hit]:
@@ -119,8 +139,12 @@ def omega_free_stream(e: Ledger) -> Iterator[Hit]:
         r = relation("review", "omega_free_stream")
         unit = e["flow.velocity"] / e["flow.length"]
         share = e["inlet.set.omega"] / unit
-        yield Hit((share < r["low"]) | (share > r["high"]), "inlet.set.omega", None,
-                  {"share": share, "low": r["low"], "high": r["high"]})
+        yield Hit(
+            (share < r["low"]) | (share > r["high"]),
+            "inlet.set.omega",
+            None,
+            {"share": share, "low": r["low"], "high": r["high"]},
+        )
 
 
 def isotropic_stresses_in_duct(e: Ledger) -> Iterator[Hit]:
@@ -135,5 +159,9 @@ def estimate_is_core_level(e: Ledger) -> Iterator[Hit]:
         mean = relation("review", "section_mean_intensity")["ratio"] * (
             e["flow.friction_velocity"] / e["flow.velocity"]
         )
-        yield Hit(e["inlet.intensity"] > 0.0, "inlet.intensity", None,
-                  {"percent": 100.0 * e["inlet.intensity"], "mean": 100.0 * mean})
+        yield Hit(
+            e["inlet.intensity"] > 0.0,
+            "inlet.intensity",
+            None,
+            {"percent": 100.0 * e["inlet.intensity"], "mean": 100.0 * mean},
+        )

@@ -21,8 +21,9 @@ def treatment_not_of_closure(e: Ledger) -> Iterator[Hit]:
     if "wall.y_plus" in e and accepted != [""]:
         treatment = e.texts["wall.treatment"]
         rows = np.array([treatment not in accepted])
-        yield Hit(rows, "wall.treatment", None,
-                  {"treatment": treatment, "accepted": ", ".join(accepted)})
+        yield Hit(
+            rows, "wall.treatment", None, {"treatment": treatment, "accepted": ", ".join(accepted)}
+        )
 
 
 def y_plus_resolved(e: Ledger) -> Iterator[Hit]:
@@ -104,8 +105,12 @@ def stack_thin(e: Ledger) -> Iterator[Hit]:
     if "wall.layers.total" in e and e.texts.get("flow.kind") in ("plate", "external"):
         r = relation("review", "stack")
         share = e["wall.layers.total"] / e["flow.boundary_layer_thickness"]
-        yield Hit((share < r["warn"]) & (share >= r["refuse"]), "wall.layers.total",
-                  r["warn"] * e["flow.boundary_layer_thickness"], {"share": share})
+        yield Hit(
+            (share < r["warn"]) & (share >= r["refuse"]),
+            "wall.layers.total",
+            r["warn"] * e["flow.boundary_layer_thickness"],
+            {"share": share},
+        )
 
 
 def stack_far_too_thin(e: Ledger) -> Iterator[Hit]:
@@ -113,8 +118,12 @@ def stack_far_too_thin(e: Ledger) -> Iterator[Hit]:
     if "wall.layers.total" in e and e.texts.get("flow.kind") in ("plate", "external"):
         limit = relation("review", "stack")["refuse"]
         share = e["wall.layers.total"] / e["flow.boundary_layer_thickness"]
-        yield Hit(share < limit, "wall.layers.total",
-                  limit * e["flow.boundary_layer_thickness"], {"share": share})
+        yield Hit(
+            share < limit,
+            "wall.layers.total",
+            limit * e["flow.boundary_layer_thickness"],
+            {"share": share},
+        )
 
 
 def stack_exceeds_passage(e: Ledger) -> Iterator[Hit]:

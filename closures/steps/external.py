@@ -43,7 +43,9 @@ def external_step(kind: str, inputs: Inputs, ledger: Ledger) -> None:
     if kind == "external":
         ledger.notes.append("friction of a flat plate at the length of the body: within about 30 %")
     if "flow.roughness" in ledger:
-        ledger.notes.append("skin friction is that of the smooth plate; roughness enters at the wall only")
+        ledger.notes.append(
+            "skin friction is that of the smooth plate; roughness enters at the wall only"
+        )
 
 
 def _station(kind: str, inputs: Inputs, ledger: Ledger) -> None:
@@ -55,15 +57,28 @@ def _station(kind: str, inputs: Inputs, ledger: Ledger) -> None:
     paths = {"length": "flow.length", "kinematic_viscosity": "fluid.kinematic_viscosity"}
     if drive == "velocity":
         ledger.given("flow.velocity", value)
-        ledger.put("flow.reynolds", value * x / nu, relation("flow", "reynolds"),
-                   velocity="flow.velocity", **paths)
+        ledger.put(
+            "flow.reynolds",
+            value * x / nu,
+            relation("flow", "reynolds"),
+            velocity="flow.velocity",
+            **paths,
+        )
     else:
         ledger.given("flow.reynolds", value)
-        ledger.put("flow.velocity", value * nu / x, relation("flow", "velocity_from_reynolds"),
-                   reynolds="flow.reynolds", **paths)
+        ledger.put(
+            "flow.velocity",
+            value * nu / x,
+            relation("flow", "velocity_from_reynolds"),
+            reynolds="flow.reynolds",
+            **paths,
+        )
     if (ledger["flow.reynolds"] < 1e3).any():
-        raise InputError("flow", f"Re = {ledger['flow.reynolds'].min():.3g} on the length",
-                         "a Reynolds number of at least 1000, where a boundary layer exists")
+        raise InputError(
+            "flow",
+            f"Re = {ledger['flow.reynolds'].min():.3g} on the length",
+            "a Reynolds number of at least 1000, where a boundary layer exists",
+        )
 
 
 def _friction(inputs: Inputs, ledger: Ledger, laminar: Any) -> None:
@@ -73,15 +88,32 @@ def _friction(inputs: Inputs, ledger: Ledger, laminar: Any) -> None:
     name = "laminar" if laminar.all() else law.replace("-", "_")
     where = laminar if laminar.all() else ~laminar
     ledger.put("flow.skin_friction", c_f, relation("plate", name), where, reynolds="flow.reynolds")
-    ledger.put("flow.friction_velocity", u * np.sqrt(0.5 * c_f), relation("flow", "friction_velocity"),
-               velocity="flow.velocity", skin_friction="flow.skin_friction")
+    ledger.put(
+        "flow.friction_velocity",
+        u * np.sqrt(0.5 * c_f),
+        relation("flow", "friction_velocity"),
+        velocity="flow.velocity",
+        skin_friction="flow.skin_friction",
+    )
     slow, fast = (relation("plate", f"thickness_{n}") for n in ("laminar", "turbulent"))
     thick = x * np.where(laminar, plate.thickness_laminar(re), plate.thickness_turbulent(re))
     thickness = slow if laminar.all() else fast
-    ledger.put("flow.boundary_layer_thickness", thick, thickness, where, reynolds="flow.reynolds",
-               distance="flow.length")
+    ledger.put(
+        "flow.boundary_layer_thickness",
+        thick,
+        thickness,
+        where,
+        reynolds="flow.reynolds",
+        distance="flow.length",
+    )
     root = x / np.sqrt(re)
     for part in ("displacement", "momentum"):
         values = np.where(laminar, slow[part] * root, fast[part] * thick)
-        ledger.put(f"flow.{part}_thickness", values, thickness, where, reynolds="flow.reynolds",
-                   distance="flow.length")
+        ledger.put(
+            f"flow.{part}_thickness",
+            values,
+            thickness,
+            where,
+            reynolds="flow.reynolds",
+            distance="flow.length",
+        )

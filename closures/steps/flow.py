@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import numpy as np
+
 from closures.inputs import Inputs
 from closures.ledger import Ledger
 from closures.situations import surface
@@ -26,16 +28,29 @@ def flow_step(inputs: Inputs, ledger: Ledger) -> None:
         external_step(kind, inputs, ledger)
     u, nu = ledger["flow.friction_velocity"], ledger["fluid.kinematic_viscosity"]
     if "fluid.density" in ledger:
-        ledger.put("flow.wall_shear_stress", ledger["fluid.density"] * (u * u),
-                   relation("flow", "wall_shear_stress"),
-                   density="fluid.density", friction_velocity="flow.friction_velocity")
-    ledger.put("flow.re_tau", ledger["flow.boundary_layer_thickness"] * u / nu,
-               relation("flow", "re_tau"), boundary_layer_thickness="flow.boundary_layer_thickness",
-               friction_velocity="flow.friction_velocity", kinematic_viscosity="fluid.kinematic_viscosity")
+        ledger.put(
+            "flow.wall_shear_stress",
+            ledger["fluid.density"] * (u * u),
+            relation("flow", "wall_shear_stress"),
+            density="fluid.density",
+            friction_velocity="flow.friction_velocity",
+        )
+    ledger.put(
+        "flow.re_tau",
+        ledger["flow.boundary_layer_thickness"] * u / nu,
+        relation("flow", "re_tau"),
+        boundary_layer_thickness="flow.boundary_layer_thickness",
+        friction_velocity="flow.friction_velocity",
+        kinematic_viscosity="fluid.kinematic_viscosity",
+    )
     if "fluid.speed_of_sound" in ledger:
-        ledger.put("flow.mach", ledger["flow.velocity"] / ledger["fluid.speed_of_sound"],
-                   relation("flow", "mach"), velocity="flow.velocity",
-                   speed_of_sound="fluid.speed_of_sound")
+        ledger.put(
+            "flow.mach",
+            ledger["flow.velocity"] / ledger["fluid.speed_of_sound"],
+            relation("flow", "mach"),
+            velocity="flow.velocity",
+            speed_of_sound="fluid.speed_of_sound",
+        )
 
 
 def _roughness(inputs: Inputs, ledger: Ledger) -> None:
@@ -44,13 +59,9 @@ def _roughness(inputs: Inputs, ledger: Ledger) -> None:
             raise InputError("flow.surface", "roughness as well", "either a surface or a roughness")
         found = surface(inputs.text("flow.surface"), "flow.surface")
         ledger.texts["flow.surface"] = found.id
-        ledger.put("flow.roughness", _one(found["value"]), relation("flow", "roughness_of_surface"))
+        ledger.put(
+            "flow.roughness", np.array([found["value"]]), relation("flow", "roughness_of_surface")
+        )
         ledger.cite(found.source)
     elif "flow.roughness" in inputs:
         ledger.given("flow.roughness", inputs.number("flow.roughness"))
-
-
-def _one(value: float):  # type: ignore[no-untyped-def]
-    import numpy as np
-
-    return np.array([value])

@@ -7,6 +7,7 @@ import numpy as np
 from closures import fluids
 from closures.inputs import Inputs
 from closures.ledger import Ledger
+from walllaw.arrays import Floats
 from walllaw.errors import InputError
 from walllaw.relation import relation
 
@@ -33,13 +34,23 @@ def fluid_step(inputs: Inputs, ledger: Ledger) -> None:
         if quantity in numbers:
             ledger.given(path, flat)
         elif quantity == "kinematic_viscosity" and "fluid.density" in ledger:
-            ledger.put(path, flat, relation("flow", "kinematic_viscosity"),
-                       dynamic_viscosity="fluid.dynamic_viscosity", density="fluid.density")
+            ledger.put(
+                path,
+                flat,
+                relation("flow", "kinematic_viscosity"),
+                dynamic_viscosity="fluid.dynamic_viscosity",
+                density="fluid.density",
+            )
         elif found.name in ("air", "water"):
             _built_in(ledger, found.name, path, quantity, flat)
         elif found.relations:
-            ledger.put(path, flat, found.relations[0],
-                       temperature="fluid.temperature", pressure="fluid.pressure")
+            ledger.put(
+                path,
+                flat,
+                found.relations[0],
+                temperature="fluid.temperature",
+                pressure="fluid.pressure",
+            )
         else:
             ledger.given(path, flat, "from the given properties")
     if "fluid.altitude" in inputs:
@@ -47,10 +58,15 @@ def fluid_step(inputs: Inputs, ledger: Ledger) -> None:
         ledger.cite("iso-2533-1975")
 
 
-def _built_in(ledger: Ledger, name: str, path: str, quantity: str, flat: fluids.Floats) -> None:
+def _built_in(ledger: Ledger, name: str, path: str, quantity: str, flat: Floats) -> None:
     if quantity in ("temperature", "pressure"):
         ledger.given(path, flat, "usual value, or of the standard atmosphere")
         return
     row = (_AIR if name == "air" else _WATER).get(quantity, "air_heat")
-    ledger.put(path, flat, relation("fluids", row),
-               temperature="fluid.temperature", pressure="fluid.pressure")
+    ledger.put(
+        path,
+        flat,
+        relation("fluids", row),
+        temperature="fluid.temperature",
+        pressure="fluid.pressure",
+    )

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+
 import numpy as np
 
 from closures.inputs import Inputs
@@ -19,8 +21,12 @@ _GEOMETRY = {
     "duct": ("width", "height"),
     "annulus": ("inner_diameter", "outer_diameter"),
 }
-_PASSAGE = {"pipe": ducts.pipe, "channel": ducts.channel, "duct": ducts.rectangle,
-            "annulus": ducts.annulus}  # fmt: skip
+_PASSAGE: dict[str, Callable[..., ducts.Passage]] = {
+    "pipe": ducts.pipe,
+    "channel": ducts.channel,
+    "duct": ducts.rectangle,
+    "annulus": ducts.annulus,
+}
 
 
 def _flow(name: str, ledger: Ledger, values: Floats, relation_name: str, **paths: str) -> Floats:
@@ -41,16 +47,31 @@ def _geometry(kind: str, inputs: Inputs, ledger: Ledger) -> ducts.Passage:
         _flow("area", ledger, passage.area, "area", **paths)
     _flow("hydraulic_diameter", ledger, passage.hydraulic_diameter, "hydraulic_diameter", **paths)
     _flow("passage", ledger, passage.gap, "passage", **paths)
-    ledger.put("flow.laminar_equivalent_diameter", passage.shape_factor * passage.hydraulic_diameter,
-               relation("ducts", "laminar_equivalent_diameter"),
-               hydraulic_diameter="flow.hydraulic_diameter")
-    _flow("boundary_layer_thickness", ledger, 0.5 * passage.gap, "half_passage", passage="flow.passage")
+    ledger.put(
+        "flow.laminar_equivalent_diameter",
+        passage.shape_factor * passage.hydraulic_diameter,
+        relation("ducts", "laminar_equivalent_diameter"),
+        hydraulic_diameter="flow.hydraulic_diameter",
+    )
+    _flow(
+        "boundary_layer_thickness",
+        ledger,
+        0.5 * passage.gap,
+        "half_passage",
+        passage="flow.passage",
+    )
     if "flow.roughness" in ledger:
         k_s = ledger["flow.roughness"]
         if (k_s >= 0.5 * passage.gap).any():
             raise InputError("flow.roughness", f"{k_s.max():g} m", "less than half the passage")
-        _flow("relative_roughness", ledger, k_s / passage.hydraulic_diameter, "relative_roughness",
-              roughness="flow.roughness", hydraulic_diameter="flow.hydraulic_diameter")
+        _flow(
+            "relative_roughness",
+            ledger,
+            k_s / passage.hydraulic_diameter,
+            "relative_roughness",
+            roughness="flow.roughness",
+            hydraulic_diameter="flow.hydraulic_diameter",
+        )
     return passage
 
 
@@ -76,16 +97,35 @@ def _velocity(kind: str, passage: ducts.Passage, inputs: Inputs, ledger: Ledger)
     ledger.given(path, value)
     d_h = passage.hydraulic_diameter
     if drive == "reynolds":
-        return _flow("velocity", ledger, value * nu / d_h, "velocity_from_reynolds", reynolds=path,
-                     kinematic_viscosity="fluid.kinematic_viscosity",
-                     hydraulic_diameter="flow.hydraulic_diameter")
+        return _flow(
+            "velocity",
+            ledger,
+            value * nu / d_h,
+            "velocity_from_reynolds",
+            reynolds=path,
+            kinematic_viscosity="fluid.kinematic_viscosity",
+            hydraulic_diameter="flow.hydraulic_diameter",
+        )
     if drive == "volume_flow":
-        return _flow("velocity", ledger, value / _area(kind, passage), "velocity_from_volume_flow",
-                     volume_flow=path, area="flow.area")
+        return _flow(
+            "velocity",
+            ledger,
+            value / _area(kind, passage),
+            "velocity_from_volume_flow",
+            volume_flow=path,
+            area="flow.area",
+        )
     if drive == "mass_flow":
         rho = _density(ledger, path)
-        return _flow("velocity", ledger, value / (rho * _area(kind, passage)),
-                     "velocity_from_mass_flow", mass_flow=path, density="fluid.density", area="flow.area")
+        return _flow(
+            "velocity",
+            ledger,
+            value / (rho * _area(kind, passage)),
+            "velocity_from_mass_flow",
+            mass_flow=path,
+            density="fluid.density",
+            area="flow.area",
+        )
     u_tau = value
     if drive == "pressure_gradient":
         u_tau = np.sqrt(0.25 * d_h * value / _density(ledger, path))
@@ -107,9 +147,12 @@ def _from_friction(
     laminar = slow * d_h / nu <= critical
     gap = ~laminar & (fast * d_h / nu < critical)
     if np.any(gap):
-        raise InputError(path, "a wall stress between the laminar and the turbulent branch",
-                         "a velocity or a flow rate, which is unique")
-    return np.where(laminar, slow, fast)
+        raise InputError(
+            path,
+            "a wall stress between the laminar and the turbulent branch",
+            "a velocity or a flow rate, which is unique",
+        )
+    return np.asarray(np.where(laminar, slow, fast))
 
 
 def _friction_diameter(passage: ducts.Passage, inputs: Inputs) -> Floats:
@@ -133,10 +176,21 @@ def internal_step(kind: str, inputs: Inputs, ledger: Ledger) -> None:
     passage = _geometry(kind, inputs, ledger)
     u = _velocity(kind, passage, inputs, ledger)
     nu, d_h = ledger["fluid.kinematic_viscosity"], np.asarray(passage.hydraulic_diameter)
-    ledger.put("flow.length", d_h, relation("flow", "hydraulic_diameter"),
-               hydraulic_diameter="flow.hydraulic_diameter")
-    _flow("reynolds", ledger, u * d_h / nu, "reynolds", velocity="flow.velocity",
-          length="flow.hydraulic_diameter", kinematic_viscosity="fluid.kinematic_viscosity")
+    ledger.put(
+        "flow.length",
+        d_h,
+        relation("flow", "hydraulic_diameter"),
+        hydraulic_diameter="flow.hydraulic_diameter",
+    )
+    _flow(
+        "reynolds",
+        ledger,
+        u * d_h / nu,
+        "reynolds",
+        velocity="flow.velocity",
+        length="flow.hydraulic_diameter",
+        kinematic_viscosity="fluid.kinematic_viscosity",
+    )
     _regime(ledger)
     _friction(kind, passage, inputs, ledger)
     _rates(passage, ledger)
@@ -163,33 +217,74 @@ def _friction(kind: str, passage: ducts.Passage, inputs: Inputs, ledger: Ledger)
         paths["relative_roughness"] = "flow.relative_roughness"
     turbulent = _turbulent_friction(ledger, u, d_f)
     f = np.where(laminar, slow, turbulent)
-    rel = relation("ducts", "friction_laminar") if laminar.all() else relation("friction", "colebrook")
+    rel = (
+        relation("ducts", "friction_laminar")
+        if laminar.all()
+        else relation("friction", "colebrook")
+    )
     ledger.put("flow.darcy_friction", f, rel, None if laminar.all() else ~laminar, **paths)
-    ledger.put("flow.darcy_friction_laminar_equivalent",
-               np.where(laminar, slow, _turbulent_friction(ledger, u, d_l + 0.0 * d_h)),
-               relation("friction", "colebrook"), ~laminar, **paths)
+    ledger.put(
+        "flow.darcy_friction_laminar_equivalent",
+        np.where(laminar, slow, _turbulent_friction(ledger, u, d_l + 0.0 * d_h)),
+        relation("friction", "colebrook"),
+        ~laminar,
+        **paths,
+    )
     if kind != "pipe":
         ledger.texts["flow.friction_diameter"] = inputs.text("flow.friction_diameter", "hydraulic")
-    _flow("skin_friction", ledger, 0.25 * f, "skin_friction_from_darcy",
-          darcy_friction="flow.darcy_friction")
-    _flow("friction_velocity", ledger, u * np.sqrt(0.125 * f), "friction_velocity",
-          velocity="flow.velocity", skin_friction="flow.skin_friction")
+    _flow(
+        "skin_friction",
+        ledger,
+        0.25 * f,
+        "skin_friction_from_darcy",
+        darcy_friction="flow.darcy_friction",
+    )
+    _flow(
+        "friction_velocity",
+        ledger,
+        u * np.sqrt(0.125 * f),
+        "friction_velocity",
+        velocity="flow.velocity",
+        skin_friction="flow.skin_friction",
+    )
 
 
 def _rates(passage: ducts.Passage, ledger: Ledger) -> None:
     u, u_tau = ledger["flow.velocity"], ledger["flow.friction_velocity"]
     if "fluid.density" in ledger:
-        gradient = 4.0 * ledger["fluid.density"] * (u_tau * u_tau) / ledger["flow.hydraulic_diameter"]
-        _flow("pressure_gradient", ledger, gradient, "pressure_gradient", density="fluid.density",
-              friction_velocity="flow.friction_velocity", hydraulic_diameter="flow.hydraulic_diameter")
+        gradient = (
+            4.0 * ledger["fluid.density"] * (u_tau * u_tau) / ledger["flow.hydraulic_diameter"]
+        )
+        _flow(
+            "pressure_gradient",
+            ledger,
+            gradient,
+            "pressure_gradient",
+            density="fluid.density",
+            friction_velocity="flow.friction_velocity",
+            hydraulic_diameter="flow.hydraulic_diameter",
+        )
     if passage.area is None:
         return
     if "flow.volume_flow" not in ledger:
-        _flow("volume_flow", ledger, u * passage.area, "volume_flow",
-              velocity="flow.velocity", area="flow.area")
+        _flow(
+            "volume_flow",
+            ledger,
+            u * passage.area,
+            "volume_flow",
+            velocity="flow.velocity",
+            area="flow.area",
+        )
     if "fluid.density" in ledger and "flow.mass_flow" not in ledger:
-        _flow("mass_flow", ledger, ledger["fluid.density"] * u * passage.area, "mass_flow",
-              density="fluid.density", velocity="flow.velocity", area="flow.area")
+        _flow(
+            "mass_flow",
+            ledger,
+            ledger["fluid.density"] * u * passage.area,
+            "mass_flow",
+            density="fluid.density",
+            velocity="flow.velocity",
+            area="flow.area",
+        )
 
 
 def _entrance(inputs: Inputs, ledger: Ledger) -> None:
@@ -199,8 +294,13 @@ def _entrance(inputs: Inputs, ledger: Ledger) -> None:
         laminar, ducts.entrance_length_laminar(re), ducts.entrance_length_turbulent(re)
     )
     name = "entrance_laminar" if laminar.all() else "entrance_turbulent"
-    ledger.put("flow.entrance_length", length, relation("ducts", name),
-               laminar if laminar.all() else ~laminar, reynolds="flow.reynolds",
-               hydraulic_diameter="flow.hydraulic_diameter")
+    ledger.put(
+        "flow.entrance_length",
+        length,
+        relation("ducts", name),
+        laminar if laminar.all() else ~laminar,
+        reynolds="flow.reynolds",
+        hydraulic_diameter="flow.hydraulic_diameter",
+    )
     if "flow.length" in inputs:
         ledger.given("flow.distance", inputs.number("flow.length"))

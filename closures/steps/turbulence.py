@@ -18,8 +18,19 @@ from walllaw.arrays import Floats
 from walllaw.errors import InputError
 from walllaw.relation import Relation, relation
 
-_SHOWN = ("k", "epsilon", "omega", "nu_t", "nu_tilde", "viscosity_ratio", "time_scale",
-          "mixing_length", "eddy_viscosity_length", "dissipation_length", "integral_length")  # fmt: skip
+_SHOWN = (
+    "k",
+    "epsilon",
+    "omega",
+    "nu_t",
+    "nu_tilde",
+    "viscosity_ratio",
+    "time_scale",
+    "mixing_length",
+    "eddy_viscosity_length",
+    "dissipation_length",
+    "integral_length",
+)
 _SCALES = ("kolmogorov_length", "kolmogorov_time", "kolmogorov_velocity", "taylor_length",
            "rms_velocity", "re_lambda", "turbulence_reynolds")  # fmt: skip
 # what a length may be a multiple of -> where it stands in the ledger
@@ -36,8 +47,12 @@ def _multiple(path: str, multiple: Multiple, ledger: Ledger) -> Floats:
     internal = "flow.passage" in ledger
     if base not in ledger or (multiple.of in ("chord", "length") and internal):
         kind = ledger.texts["flow.kind"]
-        usable = [n for n, p in _LENGTHS.items() if p in ledger and not (internal and p == "flow.length")]
-        raise InputError(path, f"a multiple of {multiple.of}, which a {kind} does not have", ", ".join(usable))
+        usable = [
+            n for n, p in _LENGTHS.items() if p in ledger and not (internal and p == "flow.length")
+        ]
+        raise InputError(
+            path, f"a multiple of {multiple.of}, which a {kind} does not have", ", ".join(usable)
+        )
     return multiple.times * ledger[base]
 
 
@@ -50,18 +65,26 @@ def _given(inputs: Inputs, ledger: Ledger) -> dict[str, Floats]:
         multiple = inputs.multiple(path)
         found[name] = _multiple(path, multiple, ledger) if multiple else inputs.number(path)
         if multiple:
-            ledger.notes.append(f"{name} = {multiple.times:g} x {multiple.of}, as the case gives it")
+            ledger.notes.append(
+                f"{name} = {multiple.times:g} x {multiple.of}, as the case gives it"
+            )
     return found
 
 
 def _developed(ledger: Ledger) -> dict[str, Floats]:
     if "flow.passage" not in ledger:
-        raise InputError("turbulence.estimate", "developed, for an external flow", "a situation of the table")
+        raise InputError(
+            "turbulence.estimate", "developed, for an external flow", "a situation of the table"
+        )
     r = relation("inlet", "core_intensity")
     re = ledger["flow.reynolds"]
-    length = usual_length("developed-pipe" if ledger.texts["flow.kind"] == "pipe" else "developed-gap")
+    length = usual_length(
+        "developed-pipe" if ledger.texts["flow.kind"] == "pipe" else "developed-gap"
+    )
     ledger.notes.append(f"intensity of developed flow: {r.formula} ({r.status})")
-    ledger.notes.append(f"mixing length of developed flow: {length['times']:g} x {length.of} ({length.source})")
+    ledger.notes.append(
+        f"mixing length of developed flow: {length['times']:g} x {length.of} ({length.source})"
+    )
     ledger.cite(length.source)
     return {
         "intensity": r["factor"] / np.sqrt(np.sqrt(np.sqrt(re))),
@@ -84,18 +107,26 @@ def _estimates(inputs: Inputs, ledger: Ledger) -> dict[str, Floats]:
             from walllaw.errors import unknown_name
 
             rows = tables.read("intensities.toml")
-            raise unknown_name(error.field, name, ["developed", *rows], "developed, " + ", ".join(rows)) from None
+            raise unknown_name(
+                error.field, name, ["developed", *rows], "developed, " + ", ".join(rows)
+            ) from None
         found["intensity"] = np.array([usual["value"]])
         ledger.notes.append(
             f"intensity {100 * usual['value']:.3g} % estimated for: {usual.title}"
-            f" (usual range {100 * usual['low']:.3g} to {100 * usual['high']:.3g} %; {usual.source})"
+            f" (usual range {100 * usual['low']:.3g} to {100 * usual['high']:.3g} %;"
+            f" {usual.source})"
         )
         ledger.cite(usual.source)
     if "turbulence.length_estimate" in inputs:
-        length = usual_length(inputs.text("turbulence.length_estimate"), "turbulence.length_estimate")
+        length = usual_length(
+            inputs.text("turbulence.length_estimate"), "turbulence.length_estimate"
+        )
         multiple = Multiple(length["times"], length.of)
         found[length.convention] = _multiple("turbulence.length_estimate", multiple, ledger)
-        ledger.notes.append(f"{length.convention} = {length['times']:g} x {length.of}: {length.title} ({length.source})")
+        ledger.notes.append(
+            f"{length.convention} = {length['times']:g} x {length.of}: {length.title}"
+            f" ({length.source})"
+        )
         ledger.cite(length.source)
     return found
 
@@ -109,8 +140,11 @@ def _quantities(inputs: Inputs, ledger: Ledger, c: Closure) -> dict[str, Floats]
     if len(found) == 1 and c.variables and set(c.variables) <= VISCOSITY_ONLY:
         return found
     if len(found) != 2:
-        raise InputError("turbulence", ", ".join(found) or "nothing",
-                         f"exactly two independent quantities of {', '.join(INPUTS)}, or an estimate")
+        raise InputError(
+            "turbulence",
+            ", ".join(found) or "nothing",
+            f"exactly two independent quantities of {', '.join(INPUTS)}, or an estimate",
+        )
     return found
 
 
@@ -119,7 +153,9 @@ def monomial_relation(name: str, pair: tuple[str, str]) -> Relation:
     q = quantity(name)
 
     def power(base: str, p: Fraction) -> str:
-        return base if p == 1 else f"{base}^{p}" if p.denominator == 1 and p > 0 else f"{base}^({p})"
+        return (
+            base if p == 1 else f"{base}^{p}" if p.denominator == 1 and p > 0 else f"{base}^({p})"
+        )
 
     formula = " ".join(power(b, p) for b, p in plan(name, *pair))
     return Relation(f"state.{name}", q.words, f"{q.symbol} = {formula}", q.unit, q.source, "memory")
@@ -158,11 +194,25 @@ def _state(result: Inlet, given: dict[str, Floats], ledger: Ledger) -> None:
         if name in given:
             ledger.given(f"inlet.{name}", values)
         elif name == "nu_tilde":
-            ledger.put("inlet.nu_tilde", values, relation("state", "spalart_allmaras_f_v1"),
-                       viscosity_ratio="inlet.viscosity_ratio")
+            ledger.put(
+                "inlet.nu_tilde",
+                values,
+                relation("state", "spalart_allmaras_f_v1"),
+                viscosity_ratio="inlet.viscosity_ratio",
+            )
         else:
-            ledger.put(f"inlet.{name}", values, monomial_relation(name, s.given), None,
-                       **{b: paths[b] for b, _ in plan(name, *s.given) if b in paths})
+            ledger.put(
+                f"inlet.{name}",
+                values,
+                monomial_relation(name, s.given),
+                None,
+                **{b: paths[b] for b, _ in plan(name, *s.given) if b in paths},
+            )
     for name in _SCALES:
-        ledger.put(f"scales.{name}", s.flat(name), monomial_relation(name, s.given), None,
-                   **{b: paths[b] for b, _ in plan(name, *s.given) if b in paths})
+        ledger.put(
+            f"scales.{name}",
+            s.flat(name),
+            monomial_relation(name, s.given),
+            None,
+            **{b: paths[b] for b, _ in plan(name, *s.given) if b in paths},
+        )

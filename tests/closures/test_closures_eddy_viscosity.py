@@ -20,17 +20,21 @@ def exact_chi(ratio: float, start: float):
 
 
 def ulp(value: float, reference) -> float:
-    return float(abs(mpmath.mpf(value) - reference) / mpmath.mpf(float(np.spacing(float(reference)))))
+    return float(
+        abs(mpmath.mpf(value) - reference) / mpmath.mpf(float(np.spacing(float(reference))))
+    )
 
 
 def test_chi_is_exact_to_4_ulp_over_20_decades():
     rng = np.random.default_rng(11)
     switch = 1e6 * C_V1
-    ratio = np.concatenate([
-        10.0 ** rng.uniform(-12, 8, 1500),
-        10.0 ** np.arange(-12.0, 9.0),
-        switch * (1 + np.arange(-50, 51) * 1e-15),
-    ])
+    ratio = np.concatenate(
+        [
+            10.0 ** rng.uniform(-12, 8, 1500),
+            10.0 ** np.arange(-12.0, 9.0),
+            switch * (1 + np.arange(-50, 51) * 1e-15),
+        ]
+    )
     chi = ev.spalart_allmaras_chi(ratio, C_V1)
     errors = [ulp(x, exact_chi(r, x)) for r, x in zip(ratio.tolist(), chi.tolist(), strict=True)]
     assert max(errors) <= 4.0
@@ -41,9 +45,14 @@ def test_chi_is_exact_to_4_ulp_over_20_decades():
 @pytest.mark.parametrize(
     ("ratio", "chi"),
     [
-        (1e-6, 0.1375449186874519), (1e-3, 0.7737206338810578), (0.009, 1.341945907018498),
-        (0.1, 2.471317086436219), (1.0, 4.622838269107443), (10.0, 12.04706391497213),
-        (100.0, 100.0357527385386), (1e4, 10000.00000357911),
+        (1e-6, 0.1375449186874519),
+        (1e-3, 0.7737206338810578),
+        (0.009, 1.341945907018498),
+        (0.1, 2.471317086436219),
+        (1.0, 4.622838269107443),
+        (10.0, 12.04706391497213),
+        (100.0, 100.0357527385386),
+        (1e4, 10000.00000357911),
     ],
 )
 def test_values(ratio, chi):

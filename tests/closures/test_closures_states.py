@@ -17,7 +17,7 @@ mpmath.mp.dps = 50
 NU = 1.5e-5
 
 # Exponents of k, epsilon and the constants, written down again from the definitions in
-# S. B. Pope, Turbulent Flows (2000), ch. 5-6, and Launder & Spalding (1974), not read from the table.
+# S. B. Pope, Turbulent Flows (2000), ch. 5-6, and Launder & Spalding (1974): not the table's own.
 DEFINITIONS = {
     "k": lambda k, e, c, cl, nu, u: k,
     "epsilon": lambda k, e, c, cl, nu, u: e,
@@ -35,7 +35,9 @@ DEFINITIONS = {
     "kolmogorov_velocity": lambda k, e, c, cl, nu, u: (nu * e) ** mpmath.mpf(0.25),
     "taylor_length": lambda k, e, c, cl, nu, u: mpmath.sqrt(10 * nu * k / e),
     "rms_velocity": lambda k, e, c, cl, nu, u: mpmath.sqrt(2 * k / 3),
-    "re_lambda": lambda k, e, c, cl, nu, u: mpmath.sqrt(2 * k / 3) * mpmath.sqrt(10 * nu * k / e) / nu,
+    "re_lambda": lambda k, e, c, cl, nu, u: (
+        mpmath.sqrt(2 * k / 3) * mpmath.sqrt(10 * nu * k / e) / nu
+    ),
     "turbulence_reynolds": lambda k, e, c, cl, nu, u: k**2 / (nu * e),
 }
 PAIRS = [
@@ -50,7 +52,9 @@ def exact(name, k, e, c=0.09, cl=0.43, nu=NU, u=40.0):
 
 
 def ulp(computed: float, reference) -> float:
-    return float(abs(mpmath.mpf(computed) - reference) / mpmath.mpf(float(np.spacing(float(reference)))))
+    return float(
+        abs(mpmath.mpf(computed) - reference) / mpmath.mpf(float(np.spacing(float(reference))))
+    )
 
 
 def condition(first: str, second: str, wanted: str) -> float:
@@ -66,7 +70,9 @@ def test_every_pair_is_independent_or_named():
     }
     lengths = ("mixing_length", "eddy_viscosity_length", "dissipation_length", "integral_length")
     viscosities = ("nu_t", "viscosity_ratio", "nu_tilde")
-    expected = {frozenset(p) for group in (lengths, viscosities) for p in itertools.combinations(group, 2)}
+    expected = {
+        frozenset(p) for group in (lengths, viscosities) for p in itertools.combinations(group, 2)
+    }
     expected |= {frozenset(("k", "intensity")), frozenset(("omega", "time_scale"))}
     assert dependent == expected
 
@@ -91,21 +97,23 @@ def exact_mp(name, k, e, u):
 
 
 def _solve(pair, inputs, u):
-    """k and epsilon from two values: every definition is log-linear, so two probes give exponents."""
+    """k and epsilon from two values: definitions are log-linear, so probes give exponents."""
     rows, rhs = [], []
     for name in pair:
         base = mpmath.log(exact_mp(name, mpmath.mpf(1), mpmath.mpf(1), u))
         e = mpmath.e
-        rows.append([
-            mpmath.log(exact_mp(name, e, mpmath.mpf(1), u)) - base,
-            mpmath.log(exact_mp(name, mpmath.mpf(1), e, u)) - base,
-        ])
+        rows.append(
+            [
+                mpmath.log(exact_mp(name, e, mpmath.mpf(1), u)) - base,
+                mpmath.log(exact_mp(name, mpmath.mpf(1), e, u)) - base,
+            ]
+        )
         rhs.append(mpmath.log(mpmath.mpf(inputs[name])) - base)
     x = mpmath.lu_solve(mpmath.matrix(rows), mpmath.matrix(rhs))
     return mpmath.exp(x[0]), mpmath.exp(x[1])
 
 
-# U = 40 m/s, Tu = 5 %, l_m = 0.07 x 0.3 m, nu = 1.5e-5: derived with 30 digits from the definitions;
+# U = 40 m/s, Tu = 5 %, l_m = 0.07 x 0.3 m, nu = 1.5e-5: 30 digits from the definitions;
 # k = 6 is the definition itself.
 def test_duct_example():
     s = state(intensity=0.05, velocity=40.0, mixing_length=0.021, kinematic_viscosity=NU)
@@ -166,7 +174,9 @@ def test_round_trip(pair, log_k, log_e, c_mu):
 
 
 def test_identities_between_scales():
-    s = state(k=[0.01, 1.5, 600.0], epsilon=[0.003, 20.0, 1e5], kinematic_viscosity=[1e-6, NU, 3e-5])
+    s = state(
+        k=[0.01, 1.5, 600.0], epsilon=[0.003, 20.0, 1e5], kinematic_viscosity=[1e-6, NU, 3e-5]
+    )
     # Pope (2000) ch. 6: Re_lambda^2 = (20/3) Re_L, eta/L = Re_L^(-3/4)
     assert np.allclose(s.re_lambda**2, 20 / 3 * s.turbulence_reynolds, rtol=1e-14)
     assert np.allclose(
@@ -185,7 +195,9 @@ def test_one_point_and_many_have_the_same_bits():
         assert np.array_equal(many[name], getattr(whole, name)), name
         for i in (0, 1, 777, n - 1):
             one = state(
-                velocity=float(u[i]), intensity=float(tu[i]), mixing_length=float(length[i]),
+                velocity=float(u[i]),
+                intensity=float(tu[i]),
+                mixing_length=float(length[i]),
                 kinematic_viscosity=NU,
             )
             assert getattr(one, name) == many[name][i], name
@@ -198,7 +210,9 @@ def test_shapes_broadcast_and_scalars_are_floats():
     assert s.omega.shape == (3, 4)
     assert isinstance(state(k=1, epsilon=np.float32(2)).omega, float)
     assert state(k=[], epsilon=1.0).nu_t.shape == (0,)
-    assert np.array_equal(convert(["omega"], k=[1.0, 2.0], epsilon=3.0)["omega"], state(k=[1, 2], epsilon=3).omega)
+    assert np.array_equal(
+        convert(["omega"], k=[1.0, 2.0], epsilon=3.0)["omega"], state(k=[1, 2], epsilon=3).omega
+    )
 
 
 def test_convert_writes_into_the_arrays_it_is_given():
