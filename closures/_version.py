@@ -1,1 +1,3 @@
+"""The version, in this one place."""
+
 __version__ = "0.1.0"

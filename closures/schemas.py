@@ -64,80 +64,60 @@ def case_schema() -> dict[str, Any]:
     }
 
 
+_TEXT = {"type": "string"}
+_NUMBER = {"type": "number"}
+
+
+def _object(required: list[str], **properties: Any) -> dict[str, Any]:
+    return {
+        "type": "object",
+        "properties": properties,
+        "required": required,
+        "additionalProperties": False,
+    }
+
+
+def _part() -> dict[str, Any]:
+    leaf = {"anyOf": [_NUMBER, _TEXT]}
+    table = {"type": "object", "additionalProperties": leaf}
+    return {"type": "object", "additionalProperties": {"anyOf": [_NUMBER, _TEXT, table]}}
+
+
+def _finding() -> dict[str, Any]:
+    texts = dict.fromkeys(("id", "quantity", "message", "why", "action", "source"), _TEXT)
+    return _object(
+        ["id", "severity", "quantity", "message", "source"],
+        severity={"enum": list(SEVERITIES)},
+        value=_NUMBER,
+        limit=_NUMBER,
+        **texts,
+    )
+
+
+def _relation() -> dict[str, Any]:
+    names = ["id", "title", "formula", "source", "status"]
+    limits = {"type": "array", "items": _NUMBER, "minItems": 2, "maxItems": 2}
+    ranges = {"type": "object", "additionalProperties": limits}
+    return _object([*names, "range"], range=ranges, **dict.fromkeys(names, _TEXT))
+
+
 def sheet_schema() -> dict[str, Any]:
     """Return the schema of a sheet."""
-    leaf = {"anyOf": [{"type": "number"}, {"type": "string"}]}
-    part = {
-        "type": "object",
-        "additionalProperties": {
-            "anyOf": [*leaf["anyOf"], {"type": "object", "additionalProperties": leaf}]
-        },
+    closure = ["id", "name", "family", "source"]
+    source = ["key", "citation"]
+    properties = {
+        "schema": {"const": SCHEMA},
+        "title": _TEXT,
+        "version": _TEXT,
+        "closure": _object(closure, **dict.fromkeys(closure, _TEXT)),
+        **{part: _part() for part in PARTS},
+        "findings": {"type": "array", "items": _finding()},
+        "assumptions": {"type": "array", "items": _TEXT},
+        "relations": {"type": "array", "items": _relation()},
+        "sources": {"type": "array", "items": _object(source, **dict.fromkeys(source, _TEXT))},
+        "cautions": {"type": "array", "items": _TEXT, "minItems": 1},
+        "units": {"type": "object", "additionalProperties": _TEXT},
     }
-    finding = {
-        "type": "object",
-        "properties": {
-            "id": {"type": "string"},
-            "severity": {"enum": list(SEVERITIES)},
-            "quantity": {"type": "string"},
-            "value": {"type": "number"},
-            "limit": {"type": "number"},
-            **{n: {"type": "string"} for n in ("message", "why", "action", "source")},
-        },
-        "required": ["id", "severity", "quantity", "message", "source"],
-        "additionalProperties": False,
-    }
-    text = {"type": "string"}
-    source = {
-        "type": "object",
-        "properties": {"key": text, "citation": text},
-        "required": ["key", "citation"],
-        "additionalProperties": False,
-    }
-    relation = {
-        "type": "object",
-        "properties": {
-            **dict.fromkeys(("id", "title", "formula", "source", "status"), text),
-            "range": {
-                "type": "object",
-                "additionalProperties": {
-                    "type": "array",
-                    "items": {"type": "number"},
-                    "minItems": 2,
-                    "maxItems": 2,
-                },
-            },
-        },
-        "required": ["id", "title", "formula", "source", "status", "range"],
-        "additionalProperties": False,
-    }
-    closure = dict.fromkeys(("id", "name", "family", "source"), text)
-    return {
-        "$schema": DRAFT,
-        "$id": "urn:closures:sheet:1",
-        "title": "Set-up sheet",
-        "type": "object",
-        "properties": {
-            "schema": {"const": SCHEMA},
-            "title": text,
-            "version": text,
-            "closure": {"type": "object", "properties": closure, "required": list(closure)},
-            **dict.fromkeys(PARTS, part),
-            "findings": {"type": "array", "items": finding},
-            "assumptions": {"type": "array", "items": text},
-            "relations": {"type": "array", "items": relation},
-            "sources": {"type": "array", "items": source},
-            "cautions": {"type": "array", "items": text, "minItems": 1},
-            "units": {"type": "object", "additionalProperties": text},
-        },
-        "required": [
-            "schema",
-            "title",
-            "version",
-            "closure",
-            "findings",
-            "sources",
-            "cautions",
-            "units",
-        ],
-        "additionalProperties": False,
-    }
+    optional = {*PARTS, "assumptions", "relations"}
+    body = _object([name for name in properties if name not in optional], **properties)
+    return {"$schema": DRAFT, "$id": "urn:closures:sheet:1", "title": "Set-up sheet", **body}

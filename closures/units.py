@@ -19,7 +19,7 @@ from walllaw.errors import InputError, nearest
 _TEXT = re.compile(
     r"\s*([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)\s*(.*?)\s*", re.ASCII
 )
-# name with exponent | slash | product | bracket; compiled when a unit is met: quick commands have none
+# name with exponent | slash | product | bracket; compiled when the first unit is met
 _PIECE = (
     r"([A-Za-zµμ°%][A-Za-zµμ°0-9_]*?)(?:\^|\*\*)?(-?[0-9])?(?=[\s.*·/()]|$)"
     r"|(/)|([.*·\s]+)|([()])"
@@ -121,7 +121,7 @@ def _factors(unit: str) -> Iterator[tuple[str, int]]:
                 sign = 1
             expect = False
         elif slash:
-            if expect and position:
+            if expect and position > 0:
                 raise ValueError(unit[position:])
             sign, expect = -1, True
         elif bracket:
@@ -136,6 +136,7 @@ def _factors(unit: str) -> Iterator[tuple[str, int]]:
 
 
 def _normal(unit: str) -> str:
+    unit = unit.removeprefix("1") if unit.startswith("1/") else unit
     return unit.replace("²", "2").replace("³", "3").replace("⁻", "-").replace("¹", "1")
 
 

@@ -30,9 +30,10 @@ def wright_omega(z: Floats) -> Floats:
 
     Notes
     -----
-    Start of Iacono and Boyd (2017), within 2 %, then two steps of Fritsch, Shafer and Crowley
-    (1973), which are of fourth order. Up to z = 1 the residual is ln(exp(z)/w) - w: z - w - ln w
-    would lose \\|z\\| ulp there. Measured against 50 digits from z = -1000 to 1e300: 2 ulp.
+    From a start within 3 % (above z = 1 the leading terms of the expansion for large z, below it
+    the form of Iacono and Boyd, 2017) two steps of Fritsch, Shafer and Crowley (1973), which are
+    of fourth order. Up to z = 1 the residual is ln(exp(z)/w) - w: z - w - ln w would lose |z| ulp
+    there. Measured against 50 digits from z = -1000 to 1e300: 2 ulp.
 
     References
     ----------
@@ -43,20 +44,30 @@ def wright_omega(z: Floats) -> Floats:
     >>> wright_omega(np.array([1.0, 1e300]))
     array([1.e+000, 1.e+300])
     """
+    # the branch for z > 1 alone where no point needs the other: the same bits in half the time
+    if z.size and z.min() > 1.0:
+        return _steps(z - np.log(z) * (z / (1.0 + z)), z)
     inner = np.maximum(z, -700.0)  # exp stays a normal number; the rest is exp(z) itself
     large = inner > 1.0
-    scale = np.where(large, 1.0, np.exp(np.minimum(inner, 1.0)))
-    exponent = np.where(large, inner, 0.0)
-    soft = np.maximum(inner, 0.0) + np.log1p(np.exp(-np.abs(inner)))
-    w = soft * (1.0 - np.log1p(soft) / (2.0 + soft))
+    upper = np.maximum(inner, 1.0)
+    x = np.exp(np.minimum(inner, 1.0))
+    soft = np.log1p(x)
+    below = soft * (1.0 - np.log1p(soft) / (2.0 + soft))
+    start = np.where(large, upper - np.log(upper) * (upper / (1.0 + upper)), below)
+    w = _steps(start, np.where(large, inner, 0.0), np.where(large, 1.0, x))
+    # below -38 the root is exp(z) to the last bit
+    return np.where(z < -38.0, np.exp(np.minimum(z, 0.0)), w)
+
+
+def _steps(w: Floats, exponent: Floats, scale: Floats | None = None) -> Floats:
+    """Take two steps of Fritsch, Shafer and Crowley on w + ln(w/scale) = exponent."""
     for _ in range(2):
-        r = exponent - w - np.log(w / scale)
+        r = exponent - w - np.log(w if scale is None else w / scale)
         p = 1.0 + w
         q = r / p
         half = 1.0 + q * (2.0 / 3.0) - q / p
         w = w + w * q * (half + q / (2.0 * p)) / half
-    # below -38 the root is exp(z) to the last bit
-    return np.where(z < -38.0, np.exp(np.minimum(z, 0.0)), w)
+    return w
 
 
 def wright_omega_lower(s: Floats) -> Floats:

@@ -207,7 +207,9 @@ def _real_count(v: dict[str, Floats]) -> Floats:
         small = (total < first + last) | (total <= first) | (total <= last)
         refuse("total", total, small, "more than the first and the last layer")
         # last - first, once and exactly: the two sides cancel alike where layers are nearly equal
-        climb, rise = _log_ratio(last - first, total - last), _log_ratio(last - first, first)
+        step = last - first
+        climb = _log_ratio(total - first, total - last, step)
+        rise = _log_ratio(last, first, step)
         equal = total / last
     else:
         growth, total = v["growth"], v["total"]
@@ -223,11 +225,11 @@ def _real_count(v: dict[str, Floats]) -> Floats:
     return count
 
 
-def _log_ratio(difference: Floats, base: Floats) -> Floats:
-    """Return ln(1 + difference/base), from the sum where that is not near base."""
+def _log_ratio(top: Floats, base: Floats, difference: Floats) -> Floats:
+    """Return ln(top/base), by their difference where they are near each other."""
     x = difference / base
     near = np.abs(x) < 0.5
-    return np.where(near, np.log1p(np.where(near, x, 0.0)), np.log((base + difference) / base))
+    return np.where(near, np.log1p(np.where(near, x, 0.0)), np.log(top / base))
 
 
 def _complete(v: dict[str, Floats]) -> dict[str, Floats]:

@@ -334,7 +334,7 @@ def karman(reynolds: FloatLike) -> Any:
     Notes
     -----
     1/sqrt(c_f) = 1.7 + 4.15 log10(Re_x c_f), closed form. Measured against 50 digits over
-    Re_x 1e3 to 1e30: @KA@ ulp.
+    Re_x 1e3 to 1e30: at most 4 ulp.
 
     References
     ----------

@@ -241,7 +241,7 @@ def re_tau_theta(re_theta: FloatLike) -> Any:
     Returns
     -------
     float or ndarray
-        delta_99 u_tau/nu [1].
+        delta_99 u_tau/nu [1]; within 9.5 % of the simulations of the same authors.
 
     Warns
     -----

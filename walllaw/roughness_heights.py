@@ -272,7 +272,7 @@ def flack_schultz(rms_height: FloatLike, skewness: FloatLike) -> Any:
     c = relation("roughness", "flack_schultz")
     shape, (rms, skew) = arrays.columns(
         rms_height=(rms_height, AMOUNT_OR_ZERO),
-        skewness=(skewness, Interval(-1.0, 1e6, open_low=True)),
+        skewness=(skewness, Interval(-1.0, 1e30, open_low=True)),
     )
     c.use(rms_height=rms, skewness=skew)
     return shape(c["factor"] * rms * np.power(1.0 + skew, c["exponent"]))

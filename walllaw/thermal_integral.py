@@ -25,7 +25,7 @@ from walllaw.relation import relation
 # constant turbulent Prandtl number, 28 for the laws that vary quickly in the sublayer
 _PANELS = 28
 _NODES = 16
-_SMALL = 1e-300  # keeps laws that divide by nu_t finite where it underflows
+_SMALL = 1e-30  # of nu_t/nu, for laws that divide by it: nothing is left of it beside 1/Pr
 
 TurbulentPrandtl = float | Callable[[Floats, Floats], Any]
 

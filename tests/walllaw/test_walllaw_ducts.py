@@ -281,7 +281,7 @@ def test_impossible_lengths_are_refused(bad):
 
 @pytest.mark.parametrize(("inner", "outer"), [(1.0, 1.0), (2.0, 1.0), ([0.1, 2.0], 1.0)])
 def test_annulus_with_the_walls_exchanged_is_refused(inner, outer):
-    with pytest.raises(InputError, match="inner_diameter.*less than outer_diameter"):
+    with pytest.raises(InputError, match=r"inner_diameter.*less than outer_diameter"):
         ducts.annulus(inner, outer)
 
 

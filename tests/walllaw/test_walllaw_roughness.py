@@ -264,7 +264,7 @@ def test_extremes_give_neither_nan_nor_infinity(name):
         p.default is inspect.Parameter.empty
         for p in inspect.signature(function).parameters.values()
     )
-    for value in (1e-100, 1e-30, 1.0, 1e30):
+    for value in (1e-30, 1e-10, 1.0, 1e10, 1e30):
         assert np.isfinite(function(*[value] * count))
 
 
