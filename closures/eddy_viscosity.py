@@ -51,7 +51,7 @@ def spalart_allmaras_chi(ratio: Floats, c_v1: float) -> Floats:
 def menter_1997_ratio(chi: Floats, A_plus: float, kappa: float) -> Floats:
     """Return nu_t/nu = chi (1 - exp(-(chi/(A_plus kappa))^2)) (menter-1997)."""
     s = np.minimum(chi / (A_plus * kappa), 1e3)
-    return -np.expm1(-s * s) * chi
+    return np.asarray(-np.expm1(-s * s) * chi)
 
 
 def menter_1997_chi(ratio: Floats, A_plus: float, kappa: float) -> Floats:

@@ -105,8 +105,16 @@ def _library(name: str, shape: Shape, t: Floats, p: Floats) -> Fluid:
         )
 
     def get(key: str) -> Any:
-        return shape(np.atleast_1d(CoolProp.PropsSI(key, "T", t, "P", p, name)))
+        values = np.atleast_1d(CoolProp.PropsSI(key, "T", t, "P", p, name))
+        if not np.isfinite(values).all():  # arrays get infinities where a number would raise
+            CoolProp.PropsSI(key, "T", float(t[0]), "P", float(p[0]), name)
+            raise ValueError(f"no {key} at one of the states")
+        return shape(values)
 
+    for key, field, values in (("T", "temperature", t), ("P", "pressure", p)):
+        low = CoolProp.PropsSI("TMIN", name) if key == "T" else 0.0
+        high = CoolProp.PropsSI(f"{key}MAX", name)
+        arrays.check(field, values, Interval(low, high))
     keys = {
         "density": "DMASS", "dynamic_viscosity": "VISCOSITY", "specific_heat": "CPMASS",
         "thermal_conductivity": "CONDUCTIVITY", "prandtl": "PRANDTL",

@@ -12,13 +12,13 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 from fractions import Fraction
-from functools import cache
 from typing import Any
 
 import numpy as np
 
 from closures import eddy_viscosity
-from closures.quantities import algebraic, quantity
+from closures.monomials import CONSTANTS, Block, Program, compiled, k_epsilon, numbers, plan
+from closures.quantities import algebraic
 from walllaw import arrays
 from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval, Shape
 from walllaw.errors import InputError, unknown_name
@@ -39,22 +39,6 @@ INPUTS = (
     "intensity",
 )
 _PARAMETERS = ("C_mu", "C_L", "kinematic_viscosity", "velocity")
-_CONSTANTS = {"C_mu", "C_L"}  # and plain numbers: combined first, whatever their shape
-_ORDER = {"intensity": 0, "velocity": 1}  # their product recurs: form it first
-
-Factors = tuple[tuple[str, Fraction], ...]
-
-
-def _exponents(name: str) -> Mapping[str, Fraction]:
-    monomial = quantity(name).monomial
-    if monomial is None:  # a caller's mistake, not a user's: callers go through INPUTS
-        raise KeyError(name)
-    return monomial
-
-
-def _k_epsilon(name: str) -> tuple[Fraction, Fraction]:
-    monomial = _exponents(name)
-    return monomial.get("k", Fraction(0)), monomial.get("epsilon", Fraction(0))
 
 
 def dependence(first: str, second: str) -> str | None:
@@ -69,143 +53,12 @@ def dependence(first: str, second: str) -> str | None:
     >>> dependence("k", "omega") is None
     True
     """
-    (ak, ae), (bk, be) = (_k_epsilon("nu_t" if n == "nu_tilde" else n) for n in (first, second))
+    (ak, ae), (bk, be) = (k_epsilon("nu_t" if n == "nu_tilde" else n) for n in (first, second))
     if ak * be != ae * bk:
         return None
     power = abs(ak / ae) if ae else Fraction(1)
     shown = "k" if power == 1 else f"k^({power})" if power.denominator > 1 else f"k^{power}"
     return f"both fix the same combination, {shown}{'/epsilon' if ae else ''}"
-
-
-@cache
-def plan(wanted: str, first: str, second: str) -> Factors:
-    """Return the factors (base, exponent) that give one quantity from two others.
-
-    Examples
-    --------
-    >>> plan("omega", "k", "nu_t")
-    (('k', Fraction(1, 1)), ('nu_t', Fraction(-1, 1)))
-    """
-    w, a, b = _exponents(wanted), _exponents(first), _exponents(second)
-    (ak, ae), (bk, be), (wk, we) = (_k_epsilon(n) for n in (first, second, wanted))
-    det = ak * be - ae * bk
-    x = (wk * be - we * bk) / det
-    y = (ak * we - ae * wk) / det
-    factors = {first: x, second: y}
-    for base in sorted(({*w} | {*a} | {*b}) - {"k", "epsilon"}):
-        power = (
-            w.get(base, Fraction(0)) - x * a.get(base, Fraction(0)) - y * b.get(base, Fraction(0))
-        )
-        factors[base] = factors.get(base, Fraction(0)) + power
-    return tuple((base, power) for base, power in factors.items() if power)
-
-
-@dataclass(frozen=True, slots=True, eq=False, repr=False)
-class _Term:
-    """Bases that share an exponent: (product of above / product of below)**(power/root)."""
-
-    above: tuple[str, ...]
-    below: tuple[str, ...]
-    power: int
-    root: int
-
-
-def _terms(factors: Iterable[tuple[str, Fraction]]) -> tuple[_Term, ...]:
-    groups: dict[Fraction, tuple[list[str], list[str]]] = {}
-    for base, power in sorted(factors, key=lambda f: _ORDER.get(f[0], 2)):
-        groups.setdefault(abs(power), ([], []))[power < 0].append(base)
-    terms = [
-        _Term(tuple(above), tuple(below), power.numerator, power.denominator)
-        for power, (above, below) in sorted(groups.items())
-    ]
-    return tuple(sorted(terms, key=lambda term: not term.above))  # no reciprocal where avoidable
-
-
-_Program = tuple[tuple[_Term, ...], tuple[_Term, ...]]
-
-
-@cache
-def _program(wanted: str, first: str, second: str) -> _Program:
-    """Return the terms of constants and the terms of variables of a plan."""
-    factors = plan(wanted, first, second)
-    constant = [f for f in factors if f[0] in _CONSTANTS or f[0][0].isdigit()]
-    return _terms(constant), _terms(f for f in factors if f not in constant)
-
-
-class _Block:
-    """The quantities of one block of points, with the products and powers already formed."""
-
-    def __init__(self, values: Mapping[str, Floats]) -> None:
-        self._values = values
-        self._formed: dict[tuple[tuple[str, ...], int], Floats] = {}
-
-    def _product(self, names: tuple[str, ...]) -> Floats:
-        if len(names) == 1:
-            return self._values[names[0]]
-        key = (names, 1)
-        if key not in self._formed:
-            self._formed[key] = self._product(names[:-1]) * self._values[names[-1]]
-        return self._formed[key]
-
-    def _whole_power(self, names: tuple[str, ...], power: int) -> Floats:
-        if power == 1:
-            return self._product(names)
-        key = (names, power)
-        if key not in self._formed:
-            half = self._whole_power(names, power // 2)
-            square = half * half
-            self._formed[key] = square * self._product(names) if power % 2 else square
-        return self._formed[key]
-
-    def _term(self, term: _Term) -> Floats:
-        if not (term.above and term.below) and term.root == 1:
-            return self._whole_power(term.above or term.below, term.power)
-        base = self._product(term.above or term.below)
-        if term.above and term.below:
-            base = base / self._product(term.below)
-        return _rational_power(base, term.power, term.root)
-
-    def _evaluate(self, terms: tuple[_Term, ...]) -> Floats | None:
-        """Multiply the terms, always in the same order."""
-        result: Floats | None = None
-        for term in terms:
-            factor = self._term(term)
-            if term.above:
-                result = factor if result is None else result * factor
-            else:
-                result = 1.0 / factor if result is None else result / factor
-        return result
-
-    def scale(self, program: _Program) -> Floats:
-        """Return the factor that holds constants only."""
-        scale = self._evaluate(program[0])
-        return np.ones(1) if scale is None else scale
-
-    def monomial(self, program: _Program, scale: Floats, out: Floats | None = None) -> Floats:
-        """Return scale times the product of the variables."""
-        body = self._evaluate(program[1])
-        return np.multiply(scale, np.ones(1) if body is None else body, out=out)
-
-
-def _rational_power(x: Floats, power: int, root: int) -> Floats:
-    """Return x**(power/root) for positive x by products and roots."""
-    while root % 2 == 0:
-        x, root = np.sqrt(x), root // 2
-    if root == 3:
-        x = np.cbrt(x)
-    result = x
-    for bit in bin(power)[3:]:
-        result = result * result
-        if bit == "1":
-            result = result * x
-    return result
-
-
-@cache
-def _numbers() -> dict[str, Floats]:
-    """Return the plain numbers of the table as arrays of one value."""
-    bases = {base for name in algebraic() for base in _exponents(name) if base[0].isdigit()}
-    return {base: np.array([float(Fraction(base))]) for base in bases}
 
 
 @dataclass(frozen=True, slots=True, eq=False, repr=False)
@@ -234,15 +87,15 @@ class State:
         if name in self.given:
             return self.values[name]
         self._need(name)
-        block, program = _Block({**self.values, **_numbers()}), _program(name, *self.given)
+        block, program = Block({**self.values, **numbers()}), compiled(name, *self.given)
         return block.monomial(program, block.scale(program))
 
-    def programs(self, names: Iterable[str]) -> dict[str, _Program]:
+    def programs(self, names: Iterable[str]) -> dict[str, Program]:
         """Return how each of the named quantities is formed, leaving out those that are given."""
         direct = [n for n in names if n in algebraic() and n not in self.given]
         for name in direct:
             self._need(name)
-        return {name: _program(name, *self.given) for name in direct}
+        return {name: compiled(name, *self.given) for name in direct}
 
     def _need(self, name: str) -> None:
         for base, _ in plan(name, *self.given):
@@ -448,8 +301,8 @@ def convert(
     names = list(wanted)
     result = {n: (out[n] if out is not None else np.empty(whole.shape.size)) for n in names}
     programs = whole.programs(names)
-    constants = {n: v for n, v in whole.values.items() if v.size == 1} | _numbers()
-    fixed = _Block(constants) if constants.keys() >= _CONSTANTS else None
+    constants = {n: v for n, v in whole.values.items() if v.size == 1} | numbers()
+    fixed = Block(constants) if constants.keys() >= CONSTANTS else None
     scales = {name: fixed.scale(program) for name, program in programs.items()} if fixed else {}
     for start in range(0, whole.shape.size, arrays.BLOCK):
         part = slice(start, start + arrays.BLOCK)
@@ -457,7 +310,7 @@ def convert(
         for name, value in values.items():
             if not arrays.within(value, interval(name)):
                 arrays.check(name, whole.shape(whole.values[name]), interval(name))
-        block = _Block(values | _numbers())
+        block = Block(values | numbers())
         for name, program in programs.items():
             scale = scales[name] if fixed else block.scale(program)
             block.monomial(program, scale, out=result[name][part])

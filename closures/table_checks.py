@@ -18,7 +18,7 @@ FAMILIES = (
     "one-equation",
     "algebraic",
     "second-moment",
-    "explicit-algebraic-stress",
+    "algebraic-stress",
     "transition",
     "heat",
 )

@@ -21,7 +21,7 @@ _TEXT = re.compile(
 )
 # name with exponent | slash | product | bracket; compiled when the first unit is met
 _PIECE = (
-    r"([A-Za-zµμ°%][A-Za-zµμ°0-9_]*?)(?:\^|\*\*)?(-?[0-9])?(?=[\s.*·/()]|$)"
+    r"([A-Za-zµμ°%][A-Za-zµμ°0-9_]*?)(?:(?:\^|\*\*)?(-?[0-9]))?(?=[\s.*·/()]|$)"
     r"|(/)|([.*·\s]+)|([()])"
 )
 _MAX_TEXT, _MAX_UNIT, _MAX_FACTORS = 80, 40, 8

@@ -14,45 +14,60 @@ from walllaw.arrays import Floats
 from walllaw.lambert import wright_omega
 
 LN10 = 2.302585092994046
-_LOG10_2 = Fraction("0.30102999566398119521373889472449302677")
-_HEAD_BITS = 40  # leaves 13 bits for the binary exponent, which needs 11
+_LN10 = Fraction("2.30258509299404568401799145468436420760")
+_GRAIN = 1.5 * 2.0**36  # adding and taking it away rounds to a multiple of 2^-16
+_HEAD_BITS = 26  # of a factor whose product with such a multiple is exact
 
 
 @cache
-def _octave(slope: float) -> tuple[float, float]:
-    """Return slope log10(2) as a sum of two numbers, the first of 40 bits."""
-    exact = Fraction(slope) * _LOG10_2
-    scale = 2 ** (_HEAD_BITS - int(np.frexp(float(exact))[1]))
-    head = float(Fraction(round(exact * scale), scale))
+def _inverse_slope(slope: float) -> tuple[float, float]:
+    """Return ln(10)/slope as a sum of two numbers, the first of 26 bits after the point."""
+    exact = _LN10 / Fraction(slope)
+    head = float(Fraction(round(exact * 2**_HEAD_BITS), 2**_HEAD_BITS))
     return head, float(exact - Fraction(head))
 
 
 def add_log10(x: Floats, slope: float, y: Floats) -> Floats:
-    """Return x + slope log10(y) where the two nearly cancel, without the rounding of either.
+    r"""Return x + slope log10(y) where the two nearly cancel, without the rounding of either.
 
     Notes
     -----
-    With y = m 2^k the logarithm is k log10(2) + log10(m). The first product is exact in its head,
-    so the sum keeps no rounding of a large logarithm.
+    With x = t + d, t of few bits, the sum is d + (slope/ln 10) ln(y exp(t ln(10)/slope)): the
+    product t ln(10)/slope is exact in its head up to \|x\| = 1024, and the logarithm is that of a
+    number near 1.
 
     Examples
     --------
     >>> round(float(add_log10(np.array([3.0]), 2.0, np.array([0.1]))[0]), 12)
     1.0
     """
-    head, tail = _octave(slope)
-    m, k = np.frexp(y)
-    low = m < 0.75  # 3/4 to 3/2 keeps the logarithm of the mantissa small
-    m, k = np.where(low, 2.0 * m, m), np.where(low, k - 1, k)
-    return (x + k * head) + (slope / LN10 * np.log(m) + k * tail)
+    head, tail = _inverse_slope(slope)
+    # worked in place: on whole blocks a new array costs as much as the arithmetic
+    short = x + _GRAIN
+    short -= _GRAIN
+    near_one = short * head
+    np.exp(near_one, out=near_one)
+    near_one *= y
+    total = np.log(near_one, out=near_one)
+    rest = x - short
+    short *= tail
+    total += short
+    total *= slope / LN10
+    total += rest
+    return total
 
 
 def inverse_square(x: Floats, step: Floats) -> Floats:
     """Return 1/(x - step)^2 for a small step, without the rounding of the difference."""
     head = x - step
-    tail = (x - head) - step
-    f = 1.0 / (head * head)
-    return f - 2.0 * f * (tail / head)
+    tail = x - head
+    tail -= step
+    f = head * head
+    np.divide(1.0, f, out=f)
+    tail /= head
+    tail *= 2.0 * f
+    f -= tail
+    return f
 
 
 def log_law_root(reynolds: Floats, slope: float, intercept: float, power: float = 1.0) -> Floats:

@@ -18,27 +18,62 @@ _START = 7.0  # 1/sqrt(f) inside the logarithm of the start
 _EASY = 2300.0  # from here on two steps reach the last digits; below a third one is taken
 
 
-def _householder(a: Floats, b: Floats, x: Floats, last: bool) -> Floats:
-    """Fourth-order step of x + 2 log10(a + b x) = 0, to be taken from x."""
-    y = a + b * x
-    p = b / y
-    f0 = add_log10(x, 2.0, y) if last else x + 2.0 * np.log10(y)
-    f1 = 1.0 + (2.0 / LN10) * p
-    f2 = -(2.0 / LN10) * p * p
-    f3 = -2.0 * f2 * p
-    half = f1 * f1 - 0.5 * f0 * f2
-    return f0 * half / (f1 * (half - 0.5 * f0 * f2) + f0 * f0 * f3 / 6.0)
+def _first_step(a: Floats, b: Floats, x: Floats) -> Floats:
+    """Step of fourth order towards the root of r = x + 2 log10(a + b x), to be taken from x.
+
+    With t = r/r1 the step is t + r2/(2 r1) t^2 + (3 r2^2 - r1 r3)/(6 r1^2) t^3, where the
+    derivatives are r1 = 1 + q, r2 = -p q, r3 = 2 p^2 q with p = b/(a + b x), q = 2 p/ln 10.
+    """
+    y = b * x  # worked in place: on whole blocks a new array costs as much as the arithmetic
+    y += a
+    t = np.log10(y)
+    t *= 2.0
+    t += x
+    p = np.divide(b, y, out=y)
+    q = (2.0 / LN10) * p
+    over = q + 1.0
+    np.divide(1.0, over, out=over)
+    t *= over
+    p *= t
+    share = q * over
+    q -= 2.0
+    q *= over
+    q *= p
+    q *= 1.0 / 6.0
+    third = np.subtract(0.5, q, out=q)
+    third *= p
+    third *= share
+    t *= np.subtract(1.0, third, out=third)
+    return t
+
+
+def _last_step(a: Floats, b: Floats, x: Floats) -> Floats:
+    """Step of third order from a point that is within 1e-5, its residual free of rounding."""
+    y = b * x
+    y += a
+    t = add_log10(x, 2.0, y)
+    p = np.divide(b, y, out=y)
+    q = (2.0 / LN10) * p
+    slope = q + 1.0
+    t /= slope
+    p *= t
+    p *= q
+    p /= slope
+    p *= 0.5
+    t *= np.subtract(1.0, p, out=p)
+    return t
 
 
 def _colebrook(re: Floats, rough: Floats, rough_constant: float, smooth_constant: float) -> Floats:
     a = rough / rough_constant
     b = smooth_constant / re
-    x = -2.0 * np.log10(a + _START * b)
+    x = np.log10(_START * b + a)
+    x *= -2.0
     low = re < _EASY
     if low.any():
-        x = np.where(low, x - _householder(a, b, x, False), x)
-    x = x - _householder(a, b, x, False)
-    return inverse_square(x, _householder(a, b, x, True))
+        x = np.where(low, x - _first_step(a, b, x), x)
+    x -= _first_step(a, b, x)
+    return inverse_square(x, _last_step(a, b, x))
 
 
 def colebrook(reynolds: FloatLike, relative_roughness: FloatLike = 0.0) -> Any:
@@ -69,10 +104,11 @@ def colebrook(reynolds: FloatLike, relative_roughness: FloatLike = 0.0) -> Any:
     Notes
     -----
     1/sqrt(f) = -2 log10(e/3.7 + 2.51/(Re sqrt(f))). The residual is concave and increasing in
-    x = 1/sqrt(f). From x = 7 inside the logarithm two Householder steps of fourth order reach the
-    last digits; points below Re = 2300 take three. No exponential, so nothing overflows.
-    Largest error found against 50 digits: 2 ulp over Re 2300 to 1e12 and roughness 0 to 0.1,
-    3 ulp over Re 100 to 1e300 and roughness 0 to 0.5.
+    x = 1/sqrt(f). From x = 7 inside the logarithm one step of fourth and one of third order reach
+    the last digits; points below Re = 2300 take one more. No exponential, so nothing overflows.
+    Largest error found against 50 digits: 3.3 ulp over Re 2300 to 1e12 and roughness 0 to 0.1
+    (a million points and a search round the worst), 3 ulp on samples of Re 100 to 1e300 and
+    roughness 0 to 0.5.
 
     References
     ----------

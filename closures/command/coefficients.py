@@ -62,7 +62,7 @@ def list_(family: str | None, form: str, output: str) -> int:
         ]
     else:
         short = [(i, f, v.replace("reynolds_stresses", "stresses")) for i, f, v, _, _ in rows]
-        lines = [f"{i:<31}{f:<26}{v}".rstrip() for i, f, v in short]
+        lines = [f"{i:<31}{f:<20}{v}".rstrip() for i, f, v in short]
     emit("\n".join(lines), output)
     return 0
 

@@ -11,9 +11,10 @@ from closures.closure_tables import Closure
 from closures.inlets import VISCOSITY_ONLY, Inlet, inlet
 from closures.inputs import Inputs
 from closures.ledger import Ledger
+from closures.monomials import plan
 from closures.quantities import quantity
 from closures.situations import usual_intensity, usual_length
-from closures.states import INPUTS, plan
+from closures.states import INPUTS
 from walllaw.arrays import Floats
 from walllaw.errors import InputError
 from walllaw.relation import Relation, relation

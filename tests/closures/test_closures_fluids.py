@@ -171,7 +171,7 @@ def test_gauge_pressure_and_altitude():
         ({"name": "humid air"}, "relative_humidity"),
         ({"name": "air", "relative_humidity": 0.5}, "humid air"),
         ({"name": "humid air", "relative_humidity": 1.5}, "relative_humidity"),
-        ({"name": "Water", "temperature": 5000.0}, "Water"),
+        ({"name": "Water", "temperature": 5000.0}, "temperature: got 5000"),
     ],
 )  # fmt: skip
 def test_what_cannot_be_used_is_named(arguments, words):

@@ -59,7 +59,7 @@ def ulp(computed: float, reference) -> float:
 
 def condition(first: str, second: str, wanted: str) -> float:
     """Sum of the absolute exponents with which the two inputs enter: rounding of the inputs."""
-    from closures.states import plan
+    from closures.monomials import plan
 
     return float(sum(abs(p) for base, p in plan(wanted, first, second) if base in (first, second)))
 
