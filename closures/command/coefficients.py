@@ -131,7 +131,7 @@ def _text(c: Closure) -> str:
         return textwrap.wrap(text, 78, initial_indent="  ", subsequent_indent="    ") or []
 
     lines = [
-        f"{c.id}: {c.name}",
+        *textwrap.wrap(f"{c.id}: {c.name}", 80, subsequent_indent="  "),
         *wrap(c.summary),
         f"  family {c.family}; variables {' '.join(c.variables) or '-'}",
     ]
