@@ -1,4 +1,4 @@
-"""Near-wall physics: wall functions, friction, roughness, heat, spacing of the first cells.
+"""Near-wall physics: wall laws and functions, friction, roughness, heat, spacing of cells.
 
 Sub-modules load when they are first used; importing the package costs next to nothing.
 """
@@ -19,15 +19,43 @@ if TYPE_CHECKING:
         plate,
         roughness,
         spacing,
+        stretching,
         wall_function,
     )
+    from walllaw.composite import Composite, WithWake
     from walllaw.errors import InputError, RangeWarning, TableError
+    from walllaw.fraction_laws import ChauhanMonkewitzNagib, Musker, SpalartAllmaras
+    from walllaw.law import Law
+    from walllaw.laws import (
+        LogLaw,
+        PowerLaw,
+        Reichardt,
+        Spalding,
+        ThreeLayer,
+        TwoLayer,
+        VanDriest,
+        ViscousSublayer,
+    )
     from walllaw.log_law_constants import log_law_pair, log_law_pairs
 
 _HOMES = {
+    "ChauhanMonkewitzNagib": "walllaw.fraction_laws",
+    "Composite": "walllaw.composite",
     "InputError": "walllaw.errors",
+    "Law": "walllaw.law",
+    "LogLaw": "walllaw.laws",
+    "Musker": "walllaw.fraction_laws",
+    "PowerLaw": "walllaw.laws",
     "RangeWarning": "walllaw.errors",
+    "Reichardt": "walllaw.laws",
+    "SpalartAllmaras": "walllaw.fraction_laws",
+    "Spalding": "walllaw.laws",
     "TableError": "walllaw.errors",
+    "ThreeLayer": "walllaw.laws",
+    "TwoLayer": "walllaw.laws",
+    "VanDriest": "walllaw.laws",
+    "ViscousSublayer": "walllaw.laws",
+    "WithWake": "walllaw.composite",
     "log_law_pair": "walllaw.log_law_constants",
     "log_law_pairs": "walllaw.log_law_constants",
 }
@@ -41,13 +69,28 @@ _MODULES = {
     "plate",
     "roughness",
     "spacing",
+    "stretching",
     "wall_function",
 }
 
 __all__ = [
+    "ChauhanMonkewitzNagib",
+    "Composite",
     "InputError",
+    "Law",
+    "LogLaw",
+    "Musker",
+    "PowerLaw",
     "RangeWarning",
+    "Reichardt",
+    "SpalartAllmaras",
+    "Spalding",
     "TableError",
+    "ThreeLayer",
+    "TwoLayer",
+    "VanDriest",
+    "ViscousSublayer",
+    "WithWake",
     "compressible",
     "disc",
     "ducts",
@@ -59,6 +102,7 @@ __all__ = [
     "plate",
     "roughness",
     "spacing",
+    "stretching",
     "wall_function",
 ]
 
