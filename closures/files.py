@@ -8,8 +8,8 @@ import sys
 from walllaw.errors import InputError
 
 
-def write_file(path: str, content: str) -> None:
-    """Write a text file through a temporary file in the same folder and a rename.
+def write_file(path: str, content: bytes) -> None:
+    """Write a file through a temporary file in the same folder and a rename.
 
     Raises
     ------
@@ -22,7 +22,7 @@ def write_file(path: str, content: str) -> None:
     temporary = ""
     try:
         handle, temporary = tempfile.mkstemp(prefix=".closures-", dir=folder)
-        with os.fdopen(handle, "w", encoding="utf-8", newline="\n") as file:
+        with os.fdopen(handle, "wb") as file:
             file.write(content)
             file.flush()
             os.fsync(file.fileno())
@@ -47,7 +47,19 @@ def emit(content: str, output: str = "-") -> None:
     if not content.endswith("\n"):
         content += "\n"
     if output != "-":
-        write_file(output, content)
+        write_file(output, content.encode("utf-8"))
         return
     sys.stdout.write(content)
     sys.stdout.flush()
+
+
+def emit_bytes(content: bytes, output: str = "-") -> None:
+    """Write a picture to standard output (``-``, unless that is a terminal) or to a file."""
+    if output != "-":
+        write_file(output, content)
+        return
+    if sys.stdout.isatty():
+        raise InputError("--output", "a terminal", "a file for the picture")
+    sys.stdout.flush()
+    sys.stdout.buffer.write(content)
+    sys.stdout.buffer.flush()

@@ -22,7 +22,7 @@ FLOORS = [
     {"case", "ledger"},
     {"inputs", "rules"},
     {"steps"},
-    {"sheets"},
+    {"sheets", "pictures"},
     {"evaluation", "report", "schemas"},
     {"command", "__main__"},
 ]  # fmt: skip

@@ -15,13 +15,14 @@ from fractions import Fraction
 from walllaw.errors import TableError
 
 Number = Fraction | float
+_DIGITS = 60  # of a literal; no printed number is longer
+_POWER = 999  # largest power of ten and largest exponent: beyond lies no double
 
 _BINARY: dict[type[ast.operator], Callable[[Number, Number], Number]] = {
     ast.Add: operator.add,
     ast.Sub: operator.sub,
     ast.Mult: operator.mul,
     ast.Div: operator.truediv,
-    ast.Pow: operator.pow,
 }
 _FUNCTIONS: dict[str, Callable[[float], float]] = {
     "sqrt": math.sqrt,
@@ -32,12 +33,28 @@ _FUNCTIONS: dict[str, Callable[[float], float]] = {
 }
 
 
+def _literal(text: str) -> Fraction:
+    power = text.lower().partition("e")[2]
+    if len(text) > _DIGITS or abs(int(power or "0")) > _POWER:
+        raise TableError(f"expression {text[:_DIGITS]!r}: not a number of usual size")
+    return Fraction(text)
+
+
+def _power(base: Number, exponent: Number) -> Number:
+    if abs(exponent) > _POWER:
+        raise TableError("expression: the exponent is too large")
+    result: Number | complex = base**exponent
+    if isinstance(result, complex):
+        raise TableError("expression: a fractional power of a negative number")
+    return result
+
+
 def _value(node: ast.expr, known: Mapping[str, Number], literal: str) -> Number:
     match node:
         case ast.Constant(value=bool()):
             pass
         case ast.Constant(value=int() | float()):
-            return Fraction(literal[node.col_offset : node.end_col_offset])
+            return _literal(literal[node.col_offset : node.end_col_offset])
         case ast.Name(id=name):
             if name == "pi":
                 return math.pi
@@ -48,6 +65,8 @@ def _value(node: ast.expr, known: Mapping[str, Number], literal: str) -> Number:
             return -_value(operand, known, literal)
         case ast.BinOp(left=left, op=op, right=right) if type(op) in _BINARY:
             return _BINARY[type(op)](_value(left, known, literal), _value(right, known, literal))
+        case ast.BinOp(left=left, op=ast.Pow(), right=right):
+            return _power(_value(left, known, literal), _value(right, known, literal))
         case ast.Call(func=ast.Name(id=name), args=[argument], keywords=[]) if name in _FUNCTIONS:
             return _FUNCTIONS[name](float(_value(argument, known, literal)))
     raise TableError(f"expression {literal!r}: only numbers, names, + - * / ** and functions")
@@ -83,7 +102,10 @@ def evaluate(text: str, known: Mapping[str, Number] | None = None) -> Number:
     """
     try:
         body = ast.parse(text.strip(), mode="eval").body
-        return _value(body, known or {}, text.strip())
+        result = _value(body, known or {}, text.strip())
+        if not math.isfinite(float(result)):
+            raise TableError(f"expression {text!r}: not finite")
+        return result
     except (SyntaxError, ZeroDivisionError, OverflowError, RecursionError, ValueError) as error:
         if isinstance(error, TableError):
             raise

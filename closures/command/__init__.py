@@ -14,6 +14,7 @@ COMMANDS = {
     "sheet": "Evaluate a case file, review it, print the set-up sheet.",
     "inlet": "Inlet values from flags, for one closure or for all.",
     "wall": "Friction velocity, first cell, layers and wall-function values from flags.",
+    "profile": "A law of the wall as a table or a picture.",
     "coefficients": "List and show coefficient sets with the source of each number.",
 }
 CAUTION = (

@@ -206,3 +206,62 @@ def test_an_old_output_survives_a_failed_run(tmp_path, capsys):
 def test_shell_completion_is_there():
     done = command(env={"_CLOSURES_COMPLETE": "bash_source", "PATH": "/usr/bin:/bin"})
     assert done.returncode in (0, 2)
+
+
+@pytest.mark.parametrize("law", ["viscous", "log", "two-layer", "three-layer", "power", "spalding",
+                                 "reichardt", "musker", "van-driest", "spalart-allmaras", "chauhan"])  # fmt: skip
+def test_profile_of_every_law(law, capsys):
+    assert run(["profile", law, "--format", "csv", "--from", "1", "--points", "5"]) == 0
+    rows = list(csv.DictReader(io.StringIO(capsys.readouterr().out)))
+    assert len(rows) == 5
+    assert float(rows[-1]["u_plus"]) > 10 or law == "viscous"
+
+
+def test_profile_forms(capsys):
+    for form in ("text", "json", "markdown"):
+        assert run(["profile", "musker", "--log-law", "lee-moser-2015", "--delta-plus", "2000",
+                    "--format", form]) == 0  # fmt: skip
+        out = capsys.readouterr().out
+        assert "Musker" in out
+    assert max(map(len, command("profile", "spalding").stdout.splitlines())) <= 80
+
+
+@pytest.mark.parametrize("form", ["svg", "png"])
+def test_profile_picture_is_the_same_every_time(form, tmp_path):
+    pictures = []
+    for n in range(2):
+        file = tmp_path / f"{n}.{form}"
+        arguments = [
+            "profile",
+            "spalding",
+            "--y-plus",
+            "40",
+            "--layers",
+            "6",
+            "--format",
+            form,
+            "-o",
+            str(file),
+        ]
+        assert command(*arguments).returncode == 0
+        pictures.append(file.read_bytes())
+    assert pictures[0] == pictures[1]
+    assert pictures[0][:5] in (b"<?xml", b"\x89PNG\r")
+
+
+@pytest.mark.parametrize(
+    ("arguments", "words"),
+    [
+        (["spaldng"], "did you mean 'spalding'"), (["spalding", "--order", "5"], "order"),
+        (["viscous", "--kappa", "0.4"], "--kappa"), (["log", "--log-law", "cole"], "log_law"),
+        (["spalding", "--from", "-1"], "--from"), (["spalding", "--points", "1"], "--points"),
+        (["spalding", "--Pi", "0.5"], "--delta-plus"), (["spalding", "--kappa", "nan"], "kappa"),
+        (["spalding", "--y-plus", "-2", "--format", "svg"], "--y-plus"),
+    ],
+)  # fmt: skip
+def test_profiles_that_cannot_be(arguments, words, capsys):
+    assert run(["profile", *arguments]) == 2
+    out, err = capsys.readouterr()
+    assert out == ""
+    assert words in err
+    assert err.count("\n") == 1

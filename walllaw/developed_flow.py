@@ -1,0 +1,480 @@
+"""Fully developed flow by mixing length: channel, pipe, open channel, plane Couette.
+
+The momentum balance gives the velocity gradient in closed form, so that the flow is one quadrature:
+composite Gauss-Legendre in a coordinate that resolves the sublayer at any Re_tau, and in the root of
+the distance from the axis in the outer half, where the gradient goes like that root.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from dataclasses import dataclass
+from functools import cache
+from typing import Any
+
+import numpy as np
+from numpy.typing import NDArray
+
+from walllaw import arrays, roughness
+from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval, Shape
+from walllaw.errors import InputError, unknown_name
+from walllaw.laws import VanDriest
+from walllaw.relation import relation
+
+GEOMETRIES = ("pipe", "channel", "open-channel", "couette")
+LENGTHS = ("nikuradse", "linear", "escudier", "cess", "laminar")
+ROUGHNESS = ("colebrook", "nikuradse", "cebeci-chang")
+MixingLength = str | Callable[[Floats, Floats], Floats]
+
+# inner panels: y+ = 15 (exp(s) - 1), short where the van Driest slope has its singularity (0.21 off
+# the real axis near s = 0.26), long further out; they end at the given Re_tau
+_STRETCH = 15.0
+_EDGES = np.array([0.0, 0.2, 0.4, 0.6, 0.9, 1.3, 1.9, 2.7, 3.9, 5.4, 7.4, 9.9, 12.9, 16.5, 21.0])
+# outer panels: y = R (1 - z^2), shorter towards the axis
+_OUTER = np.array([1.0, 0.7, 0.4, 0.15, 0.04, 0.0])
+_NODES = 11
+_CASES = 64  # cases in one block: their nodes stay in the cache
+_SECANT = 14
+
+
+@cache
+def _gauss() -> tuple[Floats, Floats, Floats]:
+    """Return nodes and weights on 0..1, and the matrix of integrals from 0 to each node."""
+    x, w = np.polynomial.legendre.leggauss(_NODES)
+    vander = np.polynomial.legendre.legvander(x, _NODES - 1)
+    antiderivative = np.array([
+        [float(np.polynomial.legendre.legval(t, np.polynomial.legendre.legint(row, lbnd=-1)))
+         for row in np.eye(_NODES)]
+        for t in x
+    ])  # fmt: skip
+    matrix = antiderivative @ np.linalg.inv(vander)
+    return 0.5 * (x + 1.0), 0.5 * w, 0.5 * matrix
+
+
+@dataclass(frozen=True, slots=True)
+class _Grid:
+    """Nodes of all panels of a block of cases: arrays (cases, panels, nodes)."""
+
+    eta: Floats
+    rest: Floats  # 1 - eta, without cancellation
+    y_plus: Floats
+    width: Floats  # d(eta) = weight x jacobian; includes the panel's width
+    step: Floats  # the same without the weights, for integrals to a node
+
+
+def _grid(re_tau: Floats, split: float) -> _Grid:
+    x, w, _ = _gauss()
+    top = np.log1p(split * re_tau / _STRETCH)[:, np.newaxis]
+    edges = np.minimum(_EDGES, top)
+    edges[:, -1] = top[:, 0]
+    start, width = edges[:, :-1, np.newaxis], np.diff(edges, axis=1)[:, :, np.newaxis]
+    s = start + width * x
+    y_in = _STRETCH * np.expm1(s)
+    scale = re_tau[:, np.newaxis, np.newaxis]
+    jac_in = width * ((y_in + _STRETCH) / scale)  # dy = 15 exp(s) ds
+    z0 = np.sqrt(np.array([1.0 - split]))[0]
+    z_edges = z0 * _OUTER
+    z_width = (z_edges[:-1] - z_edges[1:])[np.newaxis, :, np.newaxis]
+    z = z_edges[np.newaxis, :-1, np.newaxis] - z_width * x
+    rest_out = np.broadcast_to(z * z, (re_tau.size, *z.shape[1:]))
+    jac_out = np.broadcast_to(z_width * 2.0 * z, rest_out.shape)
+    eta_in = y_in / scale
+    eta = np.concatenate([eta_in, 1.0 - rest_out], axis=1)
+    rest = np.concatenate([1.0 - eta_in, rest_out], axis=1)
+    step = np.concatenate([jac_in, jac_out], axis=1)
+    return _Grid(eta, rest, eta * scale, step * w, step)
+
+
+def _total(values: Floats) -> Floats:
+    """Sum over panels and nodes; rows are contiguous, so the order is the same for any number."""
+    return np.asarray(values.reshape(values.shape[0], -1).sum(axis=1))
+
+
+def _running(values: Floats, grid: _Grid) -> Floats:
+    """Return the integral of values d(eta) from the wall to each node."""
+    _, w, matrix = _gauss()
+    parts = values * grid.step
+    inside = np.zeros_like(parts)
+    panel = np.zeros(parts.shape[:2])
+    for j in range(_NODES):
+        inside = inside + parts[:, :, j, np.newaxis] * matrix[:, j]
+        panel = panel + w[j] * parts[:, :, j]
+    before = np.cumsum(panel, axis=1) - panel
+    return inside + before[:, :, np.newaxis]
+
+
+@dataclass(frozen=True, slots=True)
+class _Model:
+    """What closes the momentum balance."""
+
+    geometry: str
+    mixing_length: MixingLength
+    kappa: float
+    A_plus: float
+    roughness: str
+
+    @property
+    def split(self) -> float:
+        """Where inner panels end: at the kink of the length, if it has one."""
+        if self.mixing_length == "escudier":
+            return relation("mixing_length", "escudier")["limit"] / self.kappa
+        return 0.5
+
+    @property
+    def law(self) -> VanDriest:
+        return VanDriest(self.kappa, self.A_plus)
+
+    def shift(self, ks_plus: Floats) -> Floats:
+        """Return the rough-wall shift of y+; by the roughness function it is exact.
+
+        Under constant stress the shifted profile is the smooth one from the shift on, so the shift
+        is where the smooth law has u+ = Delta U+.
+        """
+        if self.roughness == "cebeci-chang":
+            r = relation("mixing_length", "cebeci_chang")
+            r.use(roughness_plus=ks_plus)
+            root = np.sqrt(ks_plus) - ks_plus * np.exp(-ks_plus / r["decay"])
+            return np.maximum(r["factor"] * root, 0.0)
+        function = roughness.grigson if self.roughness == "colebrook" else roughness.ligrani_moffat
+        return np.asarray(self.law.y_plus(function(ks_plus, self.kappa, self.law.B)))
+
+    def stress(self, grid: _Grid) -> Floats:
+        """Return tau/tau_w."""
+        return np.ones_like(grid.rest) if self.geometry == "couette" else grid.rest
+
+    def gradient(self, grid: _Grid, re_tau: Floats, shift: Floats) -> tuple[Floats, Floats]:
+        """Return dU+/dy+ and nu_t/nu at the nodes."""
+        d = shift[:, np.newaxis, np.newaxis]
+        y, e = grid.y_plus + d, grid.eta + d / re_tau[:, np.newaxis, np.newaxis]
+        tau = self.stress(grid)
+        if self.mixing_length == "laminar":
+            return tau, np.zeros_like(tau)
+        damping = -np.expm1(-y / self.A_plus)
+        if self.mixing_length == "cess":
+            r = np.minimum(e, 1.0)
+            x = self.kappa * y * (2.0 - r) * (3.0 - r * (4.0 - 2.0 * r)) / 3.0 * damping
+            nu_t = 0.5 * (x * x) / (1.0 + np.sqrt(1.0 + x * x))
+            return tau / (1.0 + nu_t), nu_t
+        length = self._length(e, y) * damping
+        square = length * length
+        slope = 2.0 * tau / (1.0 + np.sqrt(1.0 + 4.0 * square * tau))
+        return slope, square * slope
+
+    def _length(self, e: Floats, y: Floats) -> Floats:
+        """Return the undamped mixing length in wall units."""
+        if callable(self.mixing_length):
+            return np.asarray(self.mixing_length(e, y)) * (y / e)
+        if self.mixing_length == "linear":
+            return self.kappa * y
+        if self.mixing_length == "escudier":
+            limit = relation("mixing_length", "escudier")["limit"]
+            return np.minimum(self.kappa * y, limit * (y / e))
+        r = relation("mixing_length", "nikuradse")
+        e = np.minimum(e, 1.0)
+        polynomial = r["c1"] + e * (r["c2"] + e * (r["c3"] + e * r["c4"]))
+        return self.kappa / r["c1"] * y * polynomial
+
+
+def _weight(model: _Model, grid: _Grid) -> Floats:
+    """Return the weight of U in the bulk mean: 2 r (pipe) or 1, in d(eta)."""
+    return 2.0 * grid.rest if model.geometry == "pipe" else np.ones_like(grid.rest)
+
+
+def _bulk(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
+    """Return U_b+ and U_c+ by parts: one integral each, no profile needed."""
+    shift = model.shift(ks * re_tau) if np.any(ks > 0) else np.zeros_like(re_tau)
+    grid = _grid(re_tau, model.split)
+    slope, _ = model.gradient(grid, re_tau, shift)
+    part = grid.width * slope
+    over = grid.rest * grid.rest if model.geometry == "pipe" else grid.rest
+    return re_tau * _total(part * over), re_tau * _total(part)
+
+
+def _reynolds(model: _Model, re_tau: Floats, bulk: Floats) -> Floats:
+    """Return the Reynolds number on the hydraulic diameter (4 h for channels, 2 R for a pipe)."""
+    factor = 2.0 if model.geometry == "pipe" else 4.0
+    return factor * re_tau * bulk
+
+
+def _in_blocks(kernel: Callable[..., tuple[Floats, ...]], *columns: Floats) -> list[Floats]:
+    size = columns[0].size
+    parts = [kernel(*(c[i : i + _CASES] for c in columns)) for i in range(0, size, _CASES)]
+    return [np.concatenate(column) for column in zip(*parts, strict=True)]
+
+
+def _solve(model: _Model, reynolds: Floats, ks: Floats) -> Floats:
+    """Return Re_tau for a Reynolds number: secant in logarithms, where they are near linear."""
+
+    def miss(x: Floats) -> Floats:
+        re_tau = np.exp(x)
+        return np.log(_reynolds(model, re_tau, _bulk(model, re_tau, ks)[0]) / reynolds)
+
+    # start: the larger of the laminar and the Blasius wall stress
+    factor = 2.0 if model.geometry == "pipe" else 4.0
+    laminar = np.sqrt(8.0 / factor * reynolds) if factor == 2.0 else np.sqrt(0.75 * reynolds)
+    a = np.log(np.maximum(laminar, 0.2 / factor * np.power(reynolds, 0.875)))
+    b = a + 0.05
+    fa, fb = miss(a), miss(b)
+    for _ in range(_SECANT):
+        flat = fb == fa
+        step = fb * (b - a) / np.where(flat, 1.0, fb - fa)
+        c = b - np.clip(np.where(flat, 0.0, step), -1.0, 1.0)
+        a, fa, b = b, fb, c
+        fb = miss(b)
+    return np.exp(b)
+
+
+@dataclass(frozen=True, slots=True, eq=False, repr=False)
+class DevelopedFlow:
+    """A developed flow, or many; floats for one case, arrays over the cases.
+
+    Profiles (``eta``, ``y_plus``, ``u_plus``, ``nu_t``, ``stress``) have one more dimension: the
+    nodes from the wall to the axis.
+
+    Attributes
+    ----------
+    re_tau, reynolds : float or ndarray
+        Friction Reynolds number on R or h; Reynolds number on the hydraulic diameter [1].
+    bulk_u_plus, centreline_u_plus : float or ndarray
+        U_b/u_tau and U_c/u_tau [1] (Couette: half the speed of the moving wall).
+    """
+
+    geometry: str
+    mixing_length: str
+    kappa: float
+    A_plus: float
+    re_tau: Any
+    reynolds: Any
+    bulk_u_plus: Any
+    centreline_u_plus: Any
+    _shape: Shape
+    _flat: tuple[Floats, Floats]
+    _model: _Model
+
+    @property
+    def darcy_friction(self) -> Any:
+        """Darcy friction factor 8/U_b+^2 [1]."""
+        return 8.0 / (self.bulk_u_plus * self.bulk_u_plus)
+
+    @property
+    def skin_friction(self) -> Any:
+        """c_f = 2/U_b+^2 [1]."""
+        return 2.0 / (self.bulk_u_plus * self.bulk_u_plus)
+
+    @property
+    def centreline_ratio(self) -> Any:
+        """U_c/U_b [1]."""
+        return self.centreline_u_plus / self.bulk_u_plus
+
+    def profiles(self) -> dict[str, NDArray[np.float64]]:
+        """Return eta, y_plus, u_plus, slope, nu_t (over nu), mixing_length (wall units), stress.
+
+        Arrays of the case's shape with one more dimension, from the wall to the axis.
+        """
+        names = ("eta", "y_plus", "u_plus", "slope", "nu_t", "mixing_length", "stress")
+        found = _in_blocks(lambda *c: _profiles(self._model, *c), *self._flat)
+        dims = self._shape.dims
+        return {n: v.reshape(*dims, v.shape[-1]) for n, v in zip(names, found, strict=True)}
+
+    def flux_coefficients(self) -> tuple[Any, Any]:
+        """Return the momentum-flux and the kinetic-energy-flux coefficient, beta and alpha [1]."""
+        beta, alpha = _in_blocks(lambda *c: _fluxes(self._model, *c), *self._flat)
+        return self._shape(beta), self._shape(alpha)
+
+    def nusselt(self, prandtl: FloatLike, turbulent_prandtl: float = 0.85) -> tuple[Any, Any]:
+        """Return the Nusselt numbers for uniform heat flux and for uniform wall temperature [1].
+
+        On the hydraulic diameter, both walls heated alike; ``prandtl`` is one number or one a case.
+        """
+        pr = np.broadcast_to(arrays.check("prandtl", prandtl, POSITIVE), self._shape.dims)
+        flat = np.ascontiguousarray(pr).reshape(-1)
+        turbulent = float(arrays.check("turbulent_prandtl", turbulent_prandtl, POSITIVE))
+        flux, temperature = _in_blocks(
+            lambda r, k, p: _nusselt(self._model, r, k, p, turbulent), *self._flat, flat
+        )
+        return self._shape(flux), self._shape(temperature)
+
+    def log_law(self, low: float = 100.0, share: float = 0.15) -> tuple[Any, Any]:
+        """Return kappa and B fitted to low < y+ < share Re_tau (least squares in ln y+)."""
+        p = _in_blocks(lambda *c: _profiles(self._model, *c)[1:3], *self._flat)
+        y, u = p
+        use = (y > low) & (y < share * self._flat[0][:, np.newaxis])
+        if (use.sum(axis=1) < 3).any():
+            raise InputError("re_tau", f"{self._flat[0].min():.4g}", "a log layer with three nodes")
+        x, n = np.where(use, np.log(y), 0.0), use.sum(axis=1)
+        mx, mu = x.sum(axis=1) / n, np.where(use, u, 0.0).sum(axis=1) / n
+        dx = np.where(use, x - mx[:, np.newaxis], 0.0)
+        slope = (dx * np.where(use, u, 0.0)).sum(axis=1) / (dx * dx).sum(axis=1)
+        return self._shape(1.0 / slope), self._shape(mu - slope * mx)
+
+    def __repr__(self) -> str:
+        return (
+            f"DevelopedFlow({self.geometry}, {self.mixing_length}, kappa={self.kappa:g}, "
+            f"A_plus={self.A_plus:g}: re_tau={self.re_tau!r}, reynolds={self.reynolds!r}, "
+            f"bulk_u_plus={self.bulk_u_plus!r})"
+        )
+
+
+def _nodes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[_Grid, Floats, Floats, Floats]:
+    shift = model.shift(ks * re_tau) if np.any(ks > 0) else np.zeros_like(re_tau)
+    grid = _grid(re_tau, model.split)
+    slope, nu_t = model.gradient(grid, re_tau, shift)
+    velocity = re_tau[:, np.newaxis, np.newaxis] * _running(slope, grid)
+    return grid, slope, nu_t, velocity
+
+
+def _profiles(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, ...]:
+    grid, slope, nu_t, velocity = _nodes(model, re_tau, ks)
+    length = np.sqrt(nu_t / np.maximum(slope, 1e-300))
+    found = (grid.eta, grid.y_plus, velocity, slope, nu_t, length, model.stress(grid))
+    # panels beyond Re_tau have no width: their nodes repeat the last edge and are kept, harmlessly
+    return tuple(np.ascontiguousarray(v).reshape(re_tau.size, -1) for v in found)
+
+
+def _fluxes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
+    grid, _, _, u = _nodes(model, re_tau, ks)
+    weight = grid.width * _weight(model, grid)
+    mean = _total(weight * u)
+    beta, alpha = _total(weight * u * u), _total(weight * u * u * u)
+    return beta / (mean * mean), alpha / (mean * mean * mean)
+
+
+def _nusselt(
+    model: _Model, re_tau: Floats, ks: Floats, pr: Floats, pr_t: float
+) -> tuple[Floats, Floats]:
+    """Lyon's integral for uniform flux; power iteration of the energy balance for the other."""
+    grid, _, nu_t, u = _nodes(model, re_tau, ks)
+    conductivity = 1.0 + pr[:, np.newaxis, np.newaxis] * nu_t / pr_t
+    pipe = model.geometry == "pipe"
+    weight = _weight(model, grid)
+    u = u / _total(grid.width * weight * u)[:, np.newaxis, np.newaxis]
+    area = grid.rest if pipe else np.ones_like(grid.rest)
+
+    def inside(theta: Floats) -> Floats:
+        """Share of the heat carried between the axis and each node."""
+        carried = weight * u * theta
+        return _total(grid.width * carried)[:, np.newaxis, np.newaxis] - _running(carried, grid)
+
+    ones = np.ones_like(u)
+    heat = inside(ones)
+    resistance = _total(grid.width * heat * heat / (area * conductivity))
+    size = 0.5 if pipe else 0.25
+    flux = 1.0 / (size * resistance)
+    theta = ones
+    for _ in range(24):  # the second eigenvalue is six times the first: 24 rounds reach 1e-16
+        theta = _running(inside(theta) / (area * conductivity), grid)
+        bulk = _total(grid.width * weight * u * theta)
+        theta = theta / bulk[:, np.newaxis, np.newaxis]
+    # with bulk 1, the flux at the wall is 1/eigenvalue of one more round
+    again = _running(inside(theta) / (area * conductivity), grid)
+    return flux, 1.0 / (size * _total(grid.width * weight * u * again))
+
+
+def developed(
+    geometry: str = "pipe",
+    *,
+    reynolds: FloatLike | None = None,
+    re_tau: FloatLike | None = None,
+    relative_roughness: FloatLike = 0.0,
+    mixing_length: MixingLength = "nikuradse",
+    kappa: float | None = None,
+    A_plus: float | None = None,
+    roughness_model: str = "colebrook",
+) -> DevelopedFlow:
+    """Solve fully developed flow with a mixing length.
+
+    Parameters
+    ----------
+    geometry : str
+        ``pipe``, ``channel``, ``open-channel`` (a half channel under a free surface) or ``couette``.
+    reynolds, re_tau : float or array
+        One of the two: U_b D_h/nu (pipe 2 R, channel and open channel 4 h, Couette 4 h with half the
+        wall speed's mean), or u_tau R/nu [1]; re_tau 0.1 to 1e10.
+    relative_roughness : float or array, optional
+        Equivalent sand-grain height over the hydraulic diameter [1], 0 to 0.05.
+    mixing_length : str or callable, optional
+        ``nikuradse``, ``linear``, ``escudier``, ``cess``, ``laminar``; or a function of (y/R, y+)
+        that returns the undamped length over R.
+    kappa, A_plus : float, optional
+        0.41 and 26 by default [1].
+    roughness_model : str, optional
+        ``colebrook`` or ``nikuradse``: the shift that returns this roughness function exactly under
+        constant stress; ``cebeci-chang``: the published shift.
+
+    Returns
+    -------
+    DevelopedFlow
+        Bulk values; profiles, fluxes, heat and log-law fit by its methods.
+
+    Warns
+    -----
+    RangeWarning
+        Below Re = 8e3, where damped mixing lengths give 5 to 15 % too much friction.
+
+    Raises
+    ------
+    InputError
+        If not exactly one of reynolds and re_tau is given, or a value cannot be used.
+
+    Notes
+    -----
+    (1 + nu_t+) dU+/dy+ = tau+, nu_t+ = l+^2 dU+/dy+: dU+/dy+ = 2 tau+/(1 + sqrt(1 + 4 l+^2 tau+)).
+    Friction agrees with eight times the panels to 1e-13 for re_tau 1 to 1e8.
+
+    References
+    ----------
+    van-driest-1956, nikuradse-1932, cess-1958, escudier-1966, cebeci-chang-1978
+
+    Examples
+    --------
+    >>> flow = developed("pipe", re_tau=1000.0)
+    >>> f"{flow.bulk_u_plus:.10f} {flow.reynolds:.4f}"
+    '18.7396341808 37479.2684'
+    """
+    model = _model(geometry, mixing_length, kappa, A_plus, roughness_model)
+    if (reynolds is None) == (re_tau is None):
+        raise InputError(
+            "reynolds", "both or neither of reynolds and re_tau", "exactly one of them"
+        )
+    given: dict[str, tuple[FloatLike, Interval]] = (
+        {"re_tau": (re_tau, Interval(0.1, 1e10))}
+        if re_tau is not None
+        else {"reynolds": (reynolds if reynolds is not None else 0.0, Interval(1.0, 1e12))}
+    )
+    shape, (first, rough) = arrays.columns(
+        **given, relative_roughness=(relative_roughness, Interval(0.0, 0.05))
+    )
+    size = max(first.size, rough.size)
+    first, rough = (np.ascontiguousarray(np.broadcast_to(v, size)) for v in (first, rough))
+    ks = rough * (2.0 if geometry == "pipe" else 4.0)  # over R or h
+    if re_tau is None:
+        (first,) = _in_blocks(lambda r, k: (_solve(model, r, k),), first, ks)
+    bulk, centre = _in_blocks(lambda r, k: _bulk(model, r, k), first, ks)
+    re = _reynolds(model, first, bulk)
+    if mixing_length in ("nikuradse", "linear", "escudier", "cess"):
+        relation("mixing_length", str(mixing_length)).use(reynolds=re)
+    name = mixing_length if isinstance(mixing_length, str) else "own"
+    return DevelopedFlow(
+        geometry, name, model.kappa, model.A_plus, shape(first), shape(re), shape(bulk),
+        shape(centre), shape, (first, ks), model,
+    )  # fmt: skip
+
+
+def _model(
+    geometry: str,
+    mixing_length: MixingLength,
+    kappa: float | None,
+    A_plus: float | None,
+    rough: str,
+) -> _Model:
+    if geometry not in GEOMETRIES:
+        raise unknown_name("geometry", geometry, GEOMETRIES)
+    if not callable(mixing_length) and mixing_length not in LENGTHS:
+        raise unknown_name("mixing_length", str(mixing_length), LENGTHS)
+    if rough not in ROUGHNESS:
+        raise unknown_name("roughness_model", rough, ROUGHNESS)
+    defaults = relation("mixing_length", "defaults")
+    k = arrays.check("kappa", defaults["kappa"] if kappa is None else kappa, Interval(0.2, 1.0))
+    a = defaults["A_plus"] if A_plus is None else A_plus
+    a = arrays.check("A_plus", a, Interval(1.0, 200.0))
+    return _Model(geometry, mixing_length, float(k), float(a), rough)
