@@ -11,6 +11,7 @@ from typing import TYPE_CHECKING, Any
 from closures._version import __version__
 
 if TYPE_CHECKING:
+    from closures.case import read_case
     from closures.closure_tables import Closure, closure
     from closures.evaluation import evaluate, sheet
     from closures.fluids import Fluid, fluid
@@ -36,6 +37,7 @@ _HOMES = {
     "evaluate": "closures.evaluation",
     "fluid": "closures.fluids",
     "inlet": "closures.inlets",
+    "read_case": "closures.case",
     "sheet": "closures.evaluation",
     "standard_atmosphere": "closures.standard_atmosphere",
     "state": "closures.states",
@@ -57,6 +59,7 @@ __all__ = [
     "evaluate",
     "fluid",
     "inlet",
+    "read_case",
     "sheet",
     "standard_atmosphere",
     "state",

@@ -163,7 +163,7 @@ def _value(label: str, key: str, text: str, known: Mapping[str, Number]) -> Numb
 def _evaluated(
     label: str, prefix: str, rows: Mapping[str, Mapping[str, str]], known: Mapping[str, Number]
 ) -> dict[str, Coefficient]:
-    """Evaluate rows in the order their expressions need; the result keeps the order of the table."""
+    """Evaluate rows in the order their expressions need; the result keeps the table's order."""
     values: dict[str, Number] = {}
     waiting = {n: row.get("value") or row.get("expression", "") for n, row in rows.items()}
     while waiting:
@@ -227,8 +227,8 @@ def build(id_: str, raw: Mapping[str, Any], label: str = "") -> Closure:
         coefficients=MappingProxyType(coefficients),
         treatments=tuple(wall.get("treatments", ())),
         misprints=tuple(raw.get("misprints", ())),
-        alternatives=_evaluated(label, "", _rows(raw, "alternatives"), {}),
-        extensions=_evaluated(label, "", _rows(raw, "extensions"), {}),
+        alternatives=_evaluated(label, "", _rows(raw, "alternatives"), shared),
+        extensions=_evaluated(label, "", _rows(raw, "extensions"), shared),
         functions=raw.get("functions", {}),
         algebra=algebra,
         wall=wall,

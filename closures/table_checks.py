@@ -7,6 +7,7 @@ from typing import Any
 
 from walllaw import tables
 from walllaw.errors import TableError, nearest
+from walllaw.exact import evaluate
 
 STATUS = ("confirmed", "secondary", "memory", "unsure", "derived", "common practice")
 FAMILIES = (
@@ -90,7 +91,7 @@ def _known(id_: str, key: str, value: object, accepted: tuple[str, ...]) -> None
 
 
 def _source(id_: str, key: str, value: object) -> None:
-    if not tables.known_source(value):
+    if value != "common practice" and not tables.known_source(value):
         raise _fail(id_, key, f"source {value!r} is not in the bibliography")
 
 
@@ -194,6 +195,24 @@ def _wall(id_: str, raw: Mapping[str, Any]) -> None:
             _known(id_, f"wall.{part}.{name}.rule", row.get("rule"), RULES)
 
 
+def _recommendation(id_: str, key: str, row: object) -> None:
+    row = _keys(id_, key, row, {"quantity", "low", "high", *_TEXT})
+    for name in ("quantity", "formula", "source", "status"):
+        if name not in row:
+            raise _fail(id_, f"{key}.{name}", "is missing")
+    _evidence(id_, key, row)
+    if ("low" in row) != ("high" in row):
+        raise _fail(id_, f"{key}.{'high' if 'low' in row else 'low'}", "is missing")
+    if "low" not in row:
+        return
+    try:
+        low, high = (evaluate(str(row[name])) for name in ("low", "high"))
+    except TableError as error:
+        raise _fail(id_, key, str(error)) from None
+    if low > high:
+        raise _fail(id_, f"{key}.low", "is above high")
+
+
 def _free_stream(id_: str, raw: Mapping[str, Any]) -> None:
     if "free_stream" not in raw:
         raise _fail(id_, "free_stream", "is missing")
@@ -209,11 +228,7 @@ def _free_stream(id_: str, raw: Mapping[str, Any]) -> None:
     if not isinstance(recommendations, list):
         raise _fail(id_, "free_stream.recommendations", "must be a list of tables")
     for row in recommendations:
-        _keys(id_, "free_stream.recommendations", row, {"quantity", *_TEXT})
-        for name in ("quantity", "formula", "source", "status"):
-            if name not in row:
-                raise _fail(id_, f"free_stream.recommendations.{name}", "is missing")
-        _evidence(id_, "free_stream.recommendations", row)
+        _recommendation(id_, "free_stream.recommendations", row)
 
 
 def check_closure(id_: str, raw: Mapping[str, Any]) -> None:

@@ -23,6 +23,7 @@ if TYPE_CHECKING:
         wall_function,
     )
     from walllaw.composite import Composite, WithWake
+    from walllaw.developed_flow import DevelopedFlow, developed
     from walllaw.errors import InputError, RangeWarning, TableError
     from walllaw.fraction_laws import ChauhanMonkewitzNagib, Musker, SpalartAllmaras
     from walllaw.law import Law
@@ -41,6 +42,7 @@ if TYPE_CHECKING:
 _HOMES = {
     "ChauhanMonkewitzNagib": "walllaw.fraction_laws",
     "Composite": "walllaw.composite",
+    "DevelopedFlow": "walllaw.developed_flow",
     "InputError": "walllaw.errors",
     "Law": "walllaw.law",
     "LogLaw": "walllaw.laws",
@@ -56,6 +58,7 @@ _HOMES = {
     "VanDriest": "walllaw.laws",
     "ViscousSublayer": "walllaw.laws",
     "WithWake": "walllaw.composite",
+    "developed": "walllaw.developed_flow",
     "log_law_pair": "walllaw.log_law_constants",
     "log_law_pairs": "walllaw.log_law_constants",
 }
@@ -76,6 +79,7 @@ _MODULES = {
 __all__ = [
     "ChauhanMonkewitzNagib",
     "Composite",
+    "DevelopedFlow",
     "InputError",
     "Law",
     "LogLaw",
@@ -92,6 +96,7 @@ __all__ = [
     "ViscousSublayer",
     "WithWake",
     "compressible",
+    "developed",
     "disc",
     "ducts",
     "friction",

@@ -1,15 +1,13 @@
 """Fully developed flow by mixing length: channel, pipe, open channel, plane Couette.
 
-The momentum balance gives the velocity gradient in closed form, so that the flow is one quadrature:
-composite Gauss-Legendre in a coordinate that resolves the sublayer at any Re_tau, and in the root of
-the distance from the axis in the outer half, where the gradient goes like that root.
+The momentum balance gives the velocity gradient in closed form, so that the flow is one quadrature
+(flow_quadrature).
 """
 
 from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
-from functools import cache
 from typing import Any
 
 import numpy as np
@@ -18,6 +16,8 @@ from numpy.typing import NDArray
 from walllaw import arrays, roughness
 from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval, Shape
 from walllaw.errors import InputError, unknown_name
+from walllaw.flow_quadrature import Grid, running, total
+from walllaw.flow_quadrature import grid as make_grid
 from walllaw.laws import VanDriest
 from walllaw.relation import relation
 
@@ -26,81 +26,8 @@ LENGTHS = ("nikuradse", "linear", "escudier", "cess", "laminar")
 ROUGHNESS = ("colebrook", "nikuradse", "cebeci-chang")
 MixingLength = str | Callable[[Floats, Floats], Floats]
 
-# inner panels: y+ = 15 (exp(s) - 1), short where the van Driest slope has its singularity (0.21 off
-# the real axis near s = 0.26), long further out; they end at the given Re_tau
-_STRETCH = 15.0
-_EDGES = np.array([0.0, 0.2, 0.4, 0.6, 0.9, 1.3, 1.9, 2.7, 3.9, 5.4, 7.4, 9.9, 12.9, 16.5, 21.0])
-# outer panels: y = R (1 - z^2), shorter towards the axis
-_OUTER = np.array([1.0, 0.7, 0.4, 0.15, 0.04, 0.0])
-_NODES = 11
 _CASES = 64  # cases in one block: their nodes stay in the cache
 _SECANT = 14
-
-
-@cache
-def _gauss() -> tuple[Floats, Floats, Floats]:
-    """Return nodes and weights on 0..1, and the matrix of integrals from 0 to each node."""
-    x, w = np.polynomial.legendre.leggauss(_NODES)
-    vander = np.polynomial.legendre.legvander(x, _NODES - 1)
-    antiderivative = np.array([
-        [float(np.polynomial.legendre.legval(t, np.polynomial.legendre.legint(row, lbnd=-1)))
-         for row in np.eye(_NODES)]
-        for t in x
-    ])  # fmt: skip
-    matrix = antiderivative @ np.linalg.inv(vander)
-    return 0.5 * (x + 1.0), 0.5 * w, 0.5 * matrix
-
-
-@dataclass(frozen=True, slots=True)
-class _Grid:
-    """Nodes of all panels of a block of cases: arrays (cases, panels, nodes)."""
-
-    eta: Floats
-    rest: Floats  # 1 - eta, without cancellation
-    y_plus: Floats
-    width: Floats  # d(eta) = weight x jacobian; includes the panel's width
-    step: Floats  # the same without the weights, for integrals to a node
-
-
-def _grid(re_tau: Floats, split: float) -> _Grid:
-    x, w, _ = _gauss()
-    top = np.log1p(split * re_tau / _STRETCH)[:, np.newaxis]
-    edges = np.minimum(_EDGES, top)
-    edges[:, -1] = top[:, 0]
-    start, width = edges[:, :-1, np.newaxis], np.diff(edges, axis=1)[:, :, np.newaxis]
-    s = start + width * x
-    y_in = _STRETCH * np.expm1(s)
-    scale = re_tau[:, np.newaxis, np.newaxis]
-    jac_in = width * ((y_in + _STRETCH) / scale)  # dy = 15 exp(s) ds
-    z0 = np.sqrt(np.array([1.0 - split]))[0]
-    z_edges = z0 * _OUTER
-    z_width = (z_edges[:-1] - z_edges[1:])[np.newaxis, :, np.newaxis]
-    z = z_edges[np.newaxis, :-1, np.newaxis] - z_width * x
-    rest_out = np.broadcast_to(z * z, (re_tau.size, *z.shape[1:]))
-    jac_out = np.broadcast_to(z_width * 2.0 * z, rest_out.shape)
-    eta_in = y_in / scale
-    eta = np.concatenate([eta_in, 1.0 - rest_out], axis=1)
-    rest = np.concatenate([1.0 - eta_in, rest_out], axis=1)
-    step = np.concatenate([jac_in, jac_out], axis=1)
-    return _Grid(eta, rest, eta * scale, step * w, step)
-
-
-def _total(values: Floats) -> Floats:
-    """Sum over panels and nodes; rows are contiguous, so the order is the same for any number."""
-    return np.asarray(values.reshape(values.shape[0], -1).sum(axis=1))
-
-
-def _running(values: Floats, grid: _Grid) -> Floats:
-    """Return the integral of values d(eta) from the wall to each node."""
-    _, w, matrix = _gauss()
-    parts = values * grid.step
-    inside = np.zeros_like(parts)
-    panel = np.zeros(parts.shape[:2])
-    for j in range(_NODES):
-        inside = inside + parts[:, :, j, np.newaxis] * matrix[:, j]
-        panel = panel + w[j] * parts[:, :, j]
-    before = np.cumsum(panel, axis=1) - panel
-    return inside + before[:, :, np.newaxis]
 
 
 @dataclass(frozen=True, slots=True)
@@ -138,11 +65,11 @@ class _Model:
         function = roughness.grigson if self.roughness == "colebrook" else roughness.ligrani_moffat
         return np.asarray(self.law.y_plus(function(ks_plus, self.kappa, self.law.B)))
 
-    def stress(self, grid: _Grid) -> Floats:
+    def stress(self, grid: Grid) -> Floats:
         """Return tau/tau_w."""
         return np.ones_like(grid.rest) if self.geometry == "couette" else grid.rest
 
-    def gradient(self, grid: _Grid, re_tau: Floats, shift: Floats) -> tuple[Floats, Floats]:
+    def gradient(self, grid: Grid, re_tau: Floats, shift: Floats) -> tuple[Floats, Floats]:
         """Return dU+/dy+ and nu_t/nu at the nodes."""
         d = shift[:, np.newaxis, np.newaxis]
         y, e = grid.y_plus + d, grid.eta + d / re_tau[:, np.newaxis, np.newaxis]
@@ -175,7 +102,7 @@ class _Model:
         return self.kappa / r["c1"] * y * polynomial
 
 
-def _weight(model: _Model, grid: _Grid) -> Floats:
+def _weight(model: _Model, grid: Grid) -> Floats:
     """Return the weight of U in the bulk mean: 2 r (pipe) or 1, in d(eta)."""
     return 2.0 * grid.rest if model.geometry == "pipe" else np.ones_like(grid.rest)
 
@@ -183,11 +110,11 @@ def _weight(model: _Model, grid: _Grid) -> Floats:
 def _bulk(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
     """Return U_b+ and U_c+ by parts: one integral each, no profile needed."""
     shift = model.shift(ks * re_tau) if np.any(ks > 0) else np.zeros_like(re_tau)
-    grid = _grid(re_tau, model.split)
+    grid = make_grid(re_tau, model.split)
     slope, _ = model.gradient(grid, re_tau, shift)
     part = grid.width * slope
     over = grid.rest * grid.rest if model.geometry == "pipe" else grid.rest
-    return re_tau * _total(part * over), re_tau * _total(part)
+    return re_tau * total(part * over), re_tau * total(part)
 
 
 def _reynolds(model: _Model, re_tau: Floats, bulk: Floats) -> Floats:
@@ -315,11 +242,11 @@ class DevelopedFlow:
         )
 
 
-def _nodes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[_Grid, Floats, Floats, Floats]:
+def _nodes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Grid, Floats, Floats, Floats]:
     shift = model.shift(ks * re_tau) if np.any(ks > 0) else np.zeros_like(re_tau)
-    grid = _grid(re_tau, model.split)
+    grid = make_grid(re_tau, model.split)
     slope, nu_t = model.gradient(grid, re_tau, shift)
-    velocity = re_tau[:, np.newaxis, np.newaxis] * _running(slope, grid)
+    velocity = re_tau[:, np.newaxis, np.newaxis] * running(slope, grid)
     return grid, slope, nu_t, velocity
 
 
@@ -334,8 +261,8 @@ def _profiles(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, ...]:
 def _fluxes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
     grid, _, _, u = _nodes(model, re_tau, ks)
     weight = grid.width * _weight(model, grid)
-    mean = _total(weight * u)
-    beta, alpha = _total(weight * u * u), _total(weight * u * u * u)
+    mean = total(weight * u)
+    beta, alpha = total(weight * u * u), total(weight * u * u * u)
     return beta / (mean * mean), alpha / (mean * mean * mean)
 
 
@@ -347,27 +274,27 @@ def _nusselt(
     conductivity = 1.0 + pr[:, np.newaxis, np.newaxis] * nu_t / pr_t
     pipe = model.geometry == "pipe"
     weight = _weight(model, grid)
-    u = u / _total(grid.width * weight * u)[:, np.newaxis, np.newaxis]
+    u = u / total(grid.width * weight * u)[:, np.newaxis, np.newaxis]
     area = grid.rest if pipe else np.ones_like(grid.rest)
 
     def inside(theta: Floats) -> Floats:
         """Share of the heat carried between the axis and each node."""
         carried = weight * u * theta
-        return _total(grid.width * carried)[:, np.newaxis, np.newaxis] - _running(carried, grid)
+        return total(grid.width * carried)[:, np.newaxis, np.newaxis] - running(carried, grid)
 
     ones = np.ones_like(u)
     heat = inside(ones)
-    resistance = _total(grid.width * heat * heat / (area * conductivity))
+    resistance = total(grid.width * heat * heat / (area * conductivity))
     size = 0.5 if pipe else 0.25
     flux = 1.0 / (size * resistance)
     theta = ones
     for _ in range(24):  # the second eigenvalue is six times the first: 24 rounds reach 1e-16
-        theta = _running(inside(theta) / (area * conductivity), grid)
-        bulk = _total(grid.width * weight * u * theta)
+        theta = running(inside(theta) / (area * conductivity), grid)
+        bulk = total(grid.width * weight * u * theta)
         theta = theta / bulk[:, np.newaxis, np.newaxis]
     # with bulk 1, the flux at the wall is 1/eigenvalue of one more round
-    again = _running(inside(theta) / (area * conductivity), grid)
-    return flux, 1.0 / (size * _total(grid.width * weight * u * again))
+    again = running(inside(theta) / (area * conductivity), grid)
+    return flux, 1.0 / (size * total(grid.width * weight * u * again))
 
 
 def developed(
@@ -386,10 +313,10 @@ def developed(
     Parameters
     ----------
     geometry : str
-        ``pipe``, ``channel``, ``open-channel`` (a half channel under a free surface) or ``couette``.
+        ``pipe``, ``channel``, ``open-channel`` (half of one, free surface) or ``couette``.
     reynolds, re_tau : float or array
-        One of the two: U_b D_h/nu (pipe 2 R, channel and open channel 4 h, Couette 4 h with half the
-        wall speed's mean), or u_tau R/nu [1]; re_tau 0.1 to 1e10.
+        One of the two: U_b D_h/nu (pipe 2 R, channel and open channel 4 h, Couette 4 h and half
+        the wall speed), or u_tau R/nu [1]; re_tau 0.1 to 1e10.
     relative_roughness : float or array, optional
         Equivalent sand-grain height over the hydraulic diameter [1], 0 to 0.05.
     mixing_length : str or callable, optional
@@ -475,6 +402,6 @@ def _model(
         raise unknown_name("roughness_model", rough, ROUGHNESS)
     defaults = relation("mixing_length", "defaults")
     k = arrays.check("kappa", defaults["kappa"] if kappa is None else kappa, Interval(0.2, 1.0))
-    a = defaults["A_plus"] if A_plus is None else A_plus
-    a = arrays.check("A_plus", a, Interval(1.0, 200.0))
+    damping = defaults["A_plus"] if A_plus is None else A_plus
+    a = arrays.check("A_plus", damping, Interval(1.0, 200.0))
     return _Model(geometry, mixing_length, float(k), float(a), rough)

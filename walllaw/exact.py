@@ -16,7 +16,8 @@ from walllaw.errors import TableError
 
 Number = Fraction | float
 _DIGITS = 60  # of a literal; no printed number is longer
-_POWER = 999  # largest power of ten and largest exponent: beyond lies no double
+_POWER = 999  # largest power of ten of a literal: beyond lies no double
+_BITS = 10_000  # of an exact power; a longer one is a mistake and would take for ever
 
 _BINARY: dict[type[ast.operator], Callable[[Number, Number], Number]] = {
     ast.Add: operator.add,
@@ -41,8 +42,10 @@ def _literal(text: str) -> Fraction:
 
 
 def _power(base: Number, exponent: Number) -> Number:
-    if abs(exponent) > _POWER:
-        raise TableError("expression: the exponent is too large")
+    if isinstance(base, Fraction):
+        bits = max(base.numerator.bit_length(), base.denominator.bit_length())
+        if abs(float(exponent)) * bits > _BITS:
+            raise TableError("expression: the power is too large")
     result: Number | complex = base**exponent
     if isinstance(result, complex):
         raise TableError("expression: a fractional power of a negative number")

@@ -1,0 +1,89 @@
+"""Panels and integrals from a wall to the axis of a developed flow, for many cases at once.
+
+Composite Gauss-Legendre: near the wall in a coordinate that resolves the sublayer at any Re_tau,
+in the outer part in the root of the distance from the axis, where the gradient goes like that root.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import cache
+
+import numpy as np
+
+from walllaw.arrays import Floats
+
+# inner panels: y+ = 15 (exp(s) - 1), short where the van Driest slope has its singularity (0.21 off
+# the real axis near s = 0.26), long further out; they end at the given Re_tau
+_STRETCH = 15.0
+_EDGES = np.array([0.0, 0.2, 0.4, 0.6, 0.9, 1.3, 1.9, 2.7, 3.9, 5.4, 7.4, 9.9, 12.9, 16.5, 21.0])
+# outer panels: y = R (1 - z^2), shorter towards the axis
+_OUTER = np.array([1.0, 0.7, 0.4, 0.15, 0.04, 0.0])
+NODES = 13  # in each panel
+
+
+@cache
+def _gauss(count: int) -> tuple[Floats, Floats, Floats]:
+    """Return nodes and weights on 0..1, and the matrix of integrals from 0 to each node."""
+    x, w = np.polynomial.legendre.leggauss(count)
+    vander = np.polynomial.legendre.legvander(x, count - 1)
+    antiderivative = np.array([
+        [float(np.polynomial.legendre.legval(t, np.polynomial.legendre.legint(row, lbnd=-1)))
+         for row in np.eye(count)]
+        for t in x
+    ])  # fmt: skip
+    matrix = antiderivative @ np.linalg.inv(vander)
+    return 0.5 * (x + 1.0), 0.5 * w, 0.5 * matrix
+
+
+@dataclass(frozen=True, slots=True)
+class Grid:
+    """Nodes of all panels of a block of cases: arrays (cases, panels, nodes)."""
+
+    eta: Floats
+    rest: Floats  # 1 - eta, without cancellation
+    y_plus: Floats
+    width: Floats  # d(eta) = weight x jacobian; includes the panel's width
+    step: Floats  # the same without the weights, for integrals to a node
+
+
+def grid(re_tau: Floats, split: float) -> Grid:
+    """Return the nodes for each Re_tau; the inner panels end at y = split R."""
+    x, w, _ = _gauss(NODES)
+    top = np.log1p(split * re_tau / _STRETCH)[:, np.newaxis]
+    edges = np.minimum(_EDGES, top)
+    edges[:, -1] = top[:, 0]
+    start, width = edges[:, :-1, np.newaxis], np.diff(edges, axis=1)[:, :, np.newaxis]
+    s = start + width * x
+    y_in = _STRETCH * np.expm1(s)
+    scale = re_tau[:, np.newaxis, np.newaxis]
+    jac_in = width * ((y_in + _STRETCH) / scale)  # dy = 15 exp(s) ds
+    z0 = np.sqrt(np.array([1.0 - split]))[0]
+    z_edges = z0 * _OUTER
+    z_width = (z_edges[:-1] - z_edges[1:])[np.newaxis, :, np.newaxis]
+    z = z_edges[np.newaxis, :-1, np.newaxis] - z_width * x
+    rest_out = np.broadcast_to(z * z, (re_tau.size, *z.shape[1:]))
+    jac_out = np.broadcast_to(z_width * 2.0 * z, rest_out.shape)
+    eta_in = y_in / scale
+    eta = np.concatenate([eta_in, 1.0 - rest_out], axis=1)
+    rest = np.concatenate([1.0 - eta_in, rest_out], axis=1)
+    step = np.concatenate([jac_in, jac_out], axis=1)
+    return Grid(eta, rest, eta * scale, step * w, step)
+
+
+def total(values: Floats) -> Floats:
+    """Sum over panels and nodes; rows are contiguous, so the order is the same for any number."""
+    return np.asarray(values.reshape(values.shape[0], -1).sum(axis=1))
+
+
+def running(values: Floats, nodes: Grid) -> Floats:
+    """Return the integral of values d(eta) from the wall to each node."""
+    _, w, matrix = _gauss(NODES)
+    parts = values * nodes.step
+    inside = np.zeros_like(parts)
+    panel = np.zeros(parts.shape[:2])
+    for j in range(NODES):
+        inside = inside + parts[:, :, j, np.newaxis] * matrix[:, j]
+        panel = panel + w[j] * parts[:, :, j]
+    before = np.cumsum(panel, axis=1) - panel
+    return inside + before[:, :, np.newaxis]
