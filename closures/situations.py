@@ -37,8 +37,8 @@ def _build(table: str, id_: str, row: dict[str, Any], needed: str) -> Usual:
     if row["source"] != "common practice" and not tables.known_source(row["source"]):
         raise TableError(f"{table}: {id_}: source {row['source']!r} is not in the bibliography")
     numbers = {n: float(evaluate(v)) for n, v in row.items() if n not in _TEXT}
-    if "low" in numbers and not numbers["low"] <= numbers["value"] <= numbers["high"]:
-        raise TableError(f"{table}: {id_}: value is not between low and high")
+    if "low" in numbers and not numbers["low"] <= numbers[needed] <= numbers["high"]:
+        raise TableError(f"{table}: {id_}: {needed} is not between low and high")
     return Usual(id=id_, numbers=numbers, **{n: row[n] for n in _TEXT if n in row})
 
 

@@ -191,7 +191,7 @@ def _wall(id_: str, raw: Mapping[str, Any]) -> None:
     for part in ("conditions", "rough"):
         _texts(id_, f"wall.{part}", wall.get(part, {}))
         for name, row in wall.get(part, {}).items():
-            _known(id_, f"wall.{part}.{name}", name, VARIABLES)
+            _known(id_, f"wall.{part}.{name}", name, tuple(raw["variables"]))
             _known(id_, f"wall.{part}.{name}.rule", row.get("rule"), RULES)
 
 

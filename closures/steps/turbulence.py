@@ -44,7 +44,7 @@ _LENGTHS = {
 
 
 def _multiple(path: str, multiple: Multiple, ledger: Ledger) -> Floats:
-    base = _LENGTHS[multiple.of]
+    base = _LENGTHS.get(multiple.of, "")
     internal = "flow.passage" in ledger
     if base not in ledger or (multiple.of in ("chord", "length") and internal):
         kind = ledger.texts["flow.kind"]

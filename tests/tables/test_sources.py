@@ -6,6 +6,7 @@ import json
 import pathlib
 import re
 
+from closures.table_checks import STATUS
 from walllaw import tables
 from walllaw.relation import relations
 
@@ -42,8 +43,23 @@ def test_every_item_is_used():
     text = "\n".join(
         p.read_text(encoding="utf-8") for p in places if p.suffix in (".toml", ".py", ".md", ".csv")
     )
-    unused = [item["id"] for item in items() if item["id"] not in text]
+    words = set(re.findall(r"[a-z0-9]+(?:-[a-z0-9]+)+", text))
+    unused = [item["id"] for item in items() if item["id"] not in words]
     assert unused == []
+
+
+def test_every_status_is_known():
+    for path in (ROOT / "tables").rglob("*.toml"):
+        for status in re.findall(r"\bstatus\s*=\s*\"([^\"]*)\"", path.read_text(encoding="utf-8")):
+            assert status in STATUS, (path, status)
+
+
+def test_every_source_names_its_status():
+    # a row of a small table that gives a source gives the status of its evidence too
+    for name in ("log_law", "surfaces", "terrains", "intensities", "lengths"):
+        for key, row in tables.read(f"{name}.toml").items():
+            assert row["source"], (name, key)
+            assert row["status"] in STATUS, (name, key)
 
 
 def test_every_relation_loads():
