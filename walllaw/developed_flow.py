@@ -13,93 +13,32 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from walllaw import arrays, roughness
+from walllaw import arrays
 from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval, Shape
 from walllaw.errors import InputError, unknown_name
 from walllaw.flow_quadrature import Grid, running, total
 from walllaw.flow_quadrature import grid as make_grid
-from walllaw.laws import VanDriest
-from walllaw.relation import relation
+from walllaw.mixing_lengths import MixingLength, MixingModel, constants
 
 GEOMETRIES = ("pipe", "channel", "open-channel", "couette")
-LENGTHS = ("nikuradse", "linear", "escudier", "cess", "laminar")
-ROUGHNESS = ("colebrook", "nikuradse", "cebeci-chang")
-MixingLength = str | Callable[[Floats, Floats], Floats]
-
 _CASES = 64  # cases in one block: their nodes stay in the cache
 _SECANT = 14
 
 
-@dataclass(frozen=True, slots=True)
-class _Model:
-    """What closes the momentum balance."""
+@dataclass(frozen=True, slots=True, kw_only=True)
+class _Model(MixingModel):
+    """A mixing length in a passage."""
 
     geometry: str
-    mixing_length: MixingLength
-    kappa: float
-    A_plus: float
-    roughness: str
-
-    @property
-    def split(self) -> float:
-        """Where inner panels end: at the kink of the length, if it has one."""
-        if self.mixing_length == "escudier":
-            return relation("mixing_length", "escudier")["limit"] / self.kappa
-        return 0.5
-
-    @property
-    def law(self) -> VanDriest:
-        return VanDriest(self.kappa, self.A_plus)
-
-    def shift(self, ks_plus: Floats) -> Floats:
-        """Return the rough-wall shift of y+; by the roughness function it is exact.
-
-        Under constant stress the shifted profile is the smooth one from the shift on, so the shift
-        is where the smooth law has u+ = Delta U+.
-        """
-        if self.roughness == "cebeci-chang":
-            r = relation("mixing_length", "cebeci_chang")
-            r.use(roughness_plus=ks_plus)
-            root = np.sqrt(ks_plus) - ks_plus * np.exp(-ks_plus / r["decay"])
-            return np.maximum(r["factor"] * root, 0.0)
-        function = roughness.grigson if self.roughness == "colebrook" else roughness.ligrani_moffat
-        return np.asarray(self.law.y_plus(function(ks_plus, self.kappa, self.law.B)))
 
     def stress(self, grid: Grid) -> Floats:
         """Return tau/tau_w."""
         return np.ones_like(grid.rest) if self.geometry == "couette" else grid.rest
 
-    def gradient(self, grid: Grid, re_tau: Floats, shift: Floats) -> tuple[Floats, Floats]:
+    def slope(self, grid: Grid, re_tau: Floats, shift: Floats) -> tuple[Floats, Floats]:
         """Return dU+/dy+ and nu_t/nu at the nodes."""
-        d = shift[:, np.newaxis, np.newaxis]
-        y, e = grid.y_plus + d, grid.eta + d / re_tau[:, np.newaxis, np.newaxis]
-        tau = self.stress(grid)
-        if self.mixing_length == "laminar":
-            return tau, np.zeros_like(tau)
-        damping = -np.expm1(-y / self.A_plus)
-        if self.mixing_length == "cess":
-            r = np.minimum(e, 1.0)
-            x = self.kappa * y * (2.0 - r) * (3.0 - r * (4.0 - 2.0 * r)) / 3.0 * damping
-            nu_t = 0.5 * (x * x) / (1.0 + np.sqrt(1.0 + x * x))
-            return tau / (1.0 + nu_t), nu_t
-        length = self._length(e, y) * damping
-        square = length * length
-        slope = 2.0 * tau / (1.0 + np.sqrt(1.0 + 4.0 * square * tau))
-        return slope, square * slope
-
-    def _length(self, e: Floats, y: Floats) -> Floats:
-        """Return the undamped mixing length in wall units."""
-        if callable(self.mixing_length):
-            return np.asarray(self.mixing_length(e, y)) * (y / e)
-        if self.mixing_length == "linear":
-            return self.kappa * y
-        if self.mixing_length == "escudier":
-            limit = relation("mixing_length", "escudier")["limit"]
-            return np.minimum(self.kappa * y, limit * (y / e))
-        r = relation("mixing_length", "nikuradse")
-        e = np.minimum(e, 1.0)
-        polynomial = r["c1"] + e * (r["c2"] + e * (r["c3"] + e * r["c4"]))
-        return self.kappa / r["c1"] * y * polynomial
+        share = {"pipe": 2.0, "couette": 0.0}.get(self.geometry, 1.0)
+        return self.gradient(grid, re_tau, shift, self.stress(grid), share / re_tau)
 
 
 def _weight(model: _Model, grid: Grid) -> Floats:
@@ -111,10 +50,13 @@ def _bulk(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
     """Return U_b+ and U_c+ by parts: one integral each, no profile needed."""
     shift = model.shift(ks * re_tau) if np.any(ks > 0) else np.zeros_like(re_tau)
     grid = make_grid(re_tau, model.split)
-    slope, _ = model.gradient(grid, re_tau, shift)
+    slope, _ = model.slope(grid, re_tau, shift)
     part = grid.width * slope
+    centre = re_tau * total(part)
+    if model.geometry == "couette":  # the mean over the whole gap is the speed halfway
+        return centre, centre
     over = grid.rest * grid.rest if model.geometry == "pipe" else grid.rest
-    return re_tau * total(part * over), re_tau * total(part)
+    return re_tau * total(part * over), centre
 
 
 def _reynolds(model: _Model, re_tau: Floats, bulk: Floats) -> Floats:
@@ -125,7 +67,7 @@ def _reynolds(model: _Model, re_tau: Floats, bulk: Floats) -> Floats:
 
 def _in_blocks(kernel: Callable[..., tuple[Floats, ...]], *columns: Floats) -> list[Floats]:
     size = columns[0].size
-    parts = [kernel(*(c[i : i + _CASES] for c in columns)) for i in range(0, size, _CASES)]
+    parts = [kernel(*(c[i : i + _CASES] for c in columns)) for i in range(0, max(size, 1), _CASES)]
     return [np.concatenate(column) for column in zip(*parts, strict=True)]
 
 
@@ -213,13 +155,50 @@ class DevelopedFlow:
 
         On the hydraulic diameter, both walls heated alike; ``prandtl`` is one number or one a case.
         """
+        flux, temperature, _, _ = self._heat(prandtl, turbulent_prandtl)
+        return self._shape(flux), self._shape(temperature)
+
+    def temperature(
+        self, prandtl: FloatLike, turbulent_prandtl: float = 0.85
+    ) -> dict[str, NDArray[np.float64]]:
+        """Return (T_w - T)/(T_w - T_b) at the nodes: uniform_flux and uniform_temperature."""
+        _, _, flux, temperature = self._heat(prandtl, turbulent_prandtl)
+        dims = (*self._shape.dims, flux.shape[-1])
+        return {
+            "uniform_flux": flux.reshape(dims),
+            "uniform_temperature": temperature.reshape(dims),
+        }
+
+    def _heat(self, prandtl: FloatLike, turbulent_prandtl: float) -> list[Floats]:
+        if self.geometry == "couette":
+            raise InputError("geometry", "couette", "a passage whose bulk carries the heat away")
         pr = np.broadcast_to(arrays.check("prandtl", prandtl, POSITIVE), self._shape.dims)
         flat = np.ascontiguousarray(pr).reshape(-1)
         turbulent = float(arrays.check("turbulent_prandtl", turbulent_prandtl, POSITIVE))
-        flux, temperature = _in_blocks(
+        return _in_blocks(
             lambda r, k, p: _nusselt(self._model, r, k, p, turbulent), *self._flat, flat
         )
-        return self._shape(flux), self._shape(temperature)
+
+    def si(self, size: FloatLike, kinematic_viscosity: FloatLike) -> dict[str, Any]:
+        """Return the flow in SI units for a radius or half height and a viscosity.
+
+        Keys: friction_velocity, bulk_velocity, centreline_velocity [m/s], flow_rate [m3/s; m2/s for
+        a plane passage], kinematic_pressure_gradient (-dp/dx/rho, m/s2), wall_strain_rate [1/s].
+        """
+        r = arrays.check("size", size, POSITIVE)
+        nu = arrays.check("kinematic_viscosity", kinematic_viscosity, POSITIVE)
+        u_tau = self.re_tau * nu / r
+        area = {"pipe": np.pi * r * r, "open-channel": r}.get(self.geometry, 2.0 * r)
+        sides = {"pipe": 2.0, "couette": 0.0}.get(self.geometry, 1.0)
+        found = {
+            "friction_velocity": u_tau,
+            "bulk_velocity": self.bulk_u_plus * u_tau,
+            "centreline_velocity": self.centreline_u_plus * u_tau,
+            "flow_rate": self.bulk_u_plus * u_tau * area,
+            "kinematic_pressure_gradient": sides * u_tau * u_tau / r,
+            "wall_strain_rate": u_tau * u_tau / nu,
+        }
+        return {n: float(v) if np.ndim(v) == 0 else v for n, v in found.items()}
 
     def log_law(self, low: float = 100.0, share: float = 0.15) -> tuple[Any, Any]:
         """Return kappa and B fitted to low < y+ < share Re_tau (least squares in ln y+)."""
@@ -245,7 +224,7 @@ class DevelopedFlow:
 def _nodes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Grid, Floats, Floats, Floats]:
     shift = model.shift(ks * re_tau) if np.any(ks > 0) else np.zeros_like(re_tau)
     grid = make_grid(re_tau, model.split)
-    slope, nu_t = model.gradient(grid, re_tau, shift)
+    slope, nu_t = model.slope(grid, re_tau, shift)
     velocity = re_tau[:, np.newaxis, np.newaxis] * running(slope, grid)
     return grid, slope, nu_t, velocity
 
@@ -260,6 +239,11 @@ def _profiles(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, ...]:
 
 def _fluxes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
     grid, _, _, u = _nodes(model, re_tau, ks)
+    if model.geometry == "couette":  # the other half of the gap: twice the middle's speed less u
+        middle = _bulk(model, re_tau, ks)[1]
+        v = 2.0 * middle[:, np.newaxis, np.newaxis] - u
+        square, cube = total(grid.width * (u * u + v * v)), total(grid.width * (u**3 + v**3))
+        return 0.5 * square / (middle * middle), 0.5 * cube / (middle * middle * middle)
     weight = grid.width * _weight(model, grid)
     mean = total(weight * u)
     beta, alpha = total(weight * u * u), total(weight * u * u * u)
@@ -268,7 +252,7 @@ def _fluxes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
 
 def _nusselt(
     model: _Model, re_tau: Floats, ks: Floats, pr: Floats, pr_t: float
-) -> tuple[Floats, Floats]:
+) -> tuple[Floats, Floats, Floats, Floats]:
     """Lyon's integral for uniform flux; power iteration of the energy balance for the other."""
     grid, _, nu_t, u = _nodes(model, re_tau, ks)
     conductivity = 1.0 + pr[:, np.newaxis, np.newaxis] * nu_t / pr_t
@@ -287,6 +271,7 @@ def _nusselt(
     resistance = total(grid.width * heat * heat / (area * conductivity))
     size = 0.5 if pipe else 0.25
     flux = 1.0 / (size * resistance)
+    uniform = running(heat / (area * conductivity), grid) / resistance[:, np.newaxis, np.newaxis]
     theta = ones
     for _ in range(24):  # the second eigenvalue is six times the first: 24 rounds reach 1e-16
         theta = running(inside(theta) / (area * conductivity), grid)
@@ -294,7 +279,73 @@ def _nusselt(
         theta = theta / bulk[:, np.newaxis, np.newaxis]
     # with bulk 1, the flux at the wall is 1/eigenvalue of one more round
     again = running(inside(theta) / (area * conductivity), grid)
-    return flux, 1.0 / (size * total(grid.width * weight * u * again))
+    temperature = 1.0 / (size * total(grid.width * weight * u * again))
+    return flux, temperature, uniform.reshape(re_tau.size, -1), theta.reshape(re_tau.size, -1)
+
+
+def driven(
+    geometry: str,
+    size: FloatLike,
+    kinematic_viscosity: FloatLike,
+    *,
+    bulk_velocity: FloatLike | None = None,
+    flow_rate: FloatLike | None = None,
+    kinematic_pressure_gradient: FloatLike | None = None,
+) -> dict[str, Any]:
+    """Return the Reynolds number that :func:`developed` takes, from what drives the flow.
+
+    Parameters
+    ----------
+    geometry : str
+        As there.
+    size : float or array
+        Radius of the pipe, half height, depth of the open channel, half gap [m].
+    kinematic_viscosity : float or array
+        [m2/s].
+    bulk_velocity, flow_rate, kinematic_pressure_gradient : float or array, optional
+        One of them: [m/s]; [m3/s], for a plane passage per width [m2/s]; -(dp/dx)/rho [m/s2], for
+        an open channel gravity times slope.
+
+    Returns
+    -------
+    dict
+        ``{"reynolds": ...}`` or ``{"re_tau": ...}``.
+
+    Raises
+    ------
+    InputError
+        If not exactly one drive is given, or a value is not positive.
+
+    Notes
+    -----
+    Force balance: u_tau^2 = g R/2 (pipe) or g h.
+
+    Examples
+    --------
+    >>> driven("pipe", 0.5, 0.001, kinematic_pressure_gradient=4.0)
+    {'re_tau': 500.0}
+    """
+    if geometry not in GEOMETRIES:
+        raise unknown_name("geometry", geometry, GEOMETRIES)
+    given = {
+        "bulk_velocity": bulk_velocity,
+        "flow_rate": flow_rate,
+        "kinematic_pressure_gradient": kinematic_pressure_gradient,
+    }
+    named = {n: v for n, v in given.items() if v is not None}
+    if len(named) != 1:
+        raise InputError("drive", ", ".join(named) or "nothing", f"one of {', '.join(given)}")
+    ((name, value),) = named.items()
+    if geometry == "couette" and name != "bulk_velocity":
+        raise InputError(name, "a flow between moving walls", "bulk_velocity, half the wall's")
+    amounts = {"size": size, "kinematic_viscosity": kinematic_viscosity, name: value}
+    shape, (r, nu, x) = arrays.columns(**{n: (v, arrays.AMOUNT) for n, v in amounts.items()})
+    pipe = geometry == "pipe"
+    if name == "kinematic_pressure_gradient":
+        return {"re_tau": shape(np.sqrt(x * r / (2.0 if pipe else 1.0)) * r / nu)}
+    if name == "flow_rate":
+        x = x / (np.pi * r * r if pipe else (r if geometry == "open-channel" else 2.0 * r))
+    return {"reynolds": shape(x * (2.0 if pipe else 4.0) * r / nu)}
 
 
 def developed(
@@ -307,6 +358,7 @@ def developed(
     kappa: float | None = None,
     A_plus: float | None = None,
     roughness_model: str = "colebrook",
+    damping: str = "van-driest",
 ) -> DevelopedFlow:
     """Solve fully developed flow with a mixing length.
 
@@ -327,6 +379,8 @@ def developed(
     roughness_model : str, optional
         ``colebrook`` or ``nikuradse``: the shift that returns this roughness function exactly under
         constant stress; ``cebeci-chang``: the published shift.
+    damping : str, optional
+        ``van-driest``, or ``cebeci``: damped more where the pressure falls steeply.
 
     Returns
     -------
@@ -358,7 +412,10 @@ def developed(
     >>> f"{flow.bulk_u_plus:.10f} {flow.reynolds:.4f}"
     '18.7396341808 37479.2684'
     """
-    model = _model(geometry, mixing_length, kappa, A_plus, roughness_model)
+    if geometry not in GEOMETRIES:
+        raise unknown_name("geometry", geometry, GEOMETRIES)
+    fields = constants(mixing_length, kappa, A_plus, roughness_model, damping)
+    model = _Model(geometry=geometry, **fields)
     if (reynolds is None) == (re_tau is None):
         raise InputError(
             "reynolds", "both or neither of reynolds and re_tau", "exactly one of them"
@@ -371,37 +428,14 @@ def developed(
     shape, (first, rough) = arrays.columns(
         **given, relative_roughness=(relative_roughness, Interval(0.0, 0.05))
     )
-    size = max(first.size, rough.size)
-    first, rough = (np.ascontiguousarray(np.broadcast_to(v, size)) for v in (first, rough))
+    first, rough = (np.ascontiguousarray(np.broadcast_to(v, shape.size)) for v in (first, rough))
     ks = rough * (2.0 if geometry == "pipe" else 4.0)  # over R or h
     if re_tau is None:
         (first,) = _in_blocks(lambda r, k: (_solve(model, r, k),), first, ks)
     bulk, centre = _in_blocks(lambda r, k: _bulk(model, r, k), first, ks)
     re = _reynolds(model, first, bulk)
-    if mixing_length in ("nikuradse", "linear", "escudier", "cess"):
-        relation("mixing_length", str(mixing_length)).use(reynolds=re)
-    name = mixing_length if isinstance(mixing_length, str) else "own"
+    model.use(re)
     return DevelopedFlow(
-        geometry, name, model.kappa, model.A_plus, shape(first), shape(re), shape(bulk),
+        geometry, model.name, model.kappa, model.A_plus, shape(first), shape(re), shape(bulk),
         shape(centre), shape, (first, ks), model,
     )  # fmt: skip
-
-
-def _model(
-    geometry: str,
-    mixing_length: MixingLength,
-    kappa: float | None,
-    A_plus: float | None,
-    rough: str,
-) -> _Model:
-    if geometry not in GEOMETRIES:
-        raise unknown_name("geometry", geometry, GEOMETRIES)
-    if not callable(mixing_length) and mixing_length not in LENGTHS:
-        raise unknown_name("mixing_length", str(mixing_length), LENGTHS)
-    if rough not in ROUGHNESS:
-        raise unknown_name("roughness_model", rough, ROUGHNESS)
-    defaults = relation("mixing_length", "defaults")
-    k = arrays.check("kappa", defaults["kappa"] if kappa is None else kappa, Interval(0.2, 1.0))
-    damping = defaults["A_plus"] if A_plus is None else A_plus
-    a = arrays.check("A_plus", damping, Interval(1.0, 200.0))
-    return _Model(geometry, mixing_length, float(k), float(a), rough)

@@ -18,7 +18,7 @@ from walllaw.arrays import Floats
 _STRETCH = 15.0
 _EDGES = np.array([0.0, 0.2, 0.4, 0.6, 0.9, 1.3, 1.9, 2.7, 3.9, 5.4, 7.4, 9.9, 12.9, 16.5, 21.0])
 # outer panels: y = R (1 - z^2), shorter towards the axis
-_OUTER = np.array([1.0, 0.7, 0.4, 0.15, 0.04, 0.0])
+_OUTER = np.array([1.0, 0.7, 0.4, 0.15, 0.04, 0.008, 0.0])
 NODES = 13  # in each panel
 
 
