@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import re
+from collections.abc import Callable
 from dataclasses import dataclass, fields
 from typing import Any
 
@@ -10,16 +12,20 @@ import numpy as np
 from closures import water
 from closures.standard_atmosphere import standard_atmosphere
 from walllaw import arrays
-from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval, Shape
+from walllaw.arrays import AMOUNT, SIGNED, FloatLike, Floats, Interval, Shape
 from walllaw.errors import InputError, nearest
 from walllaw.relation import Relation, relation
 
 ATMOSPHERE = 101325.0  # one standard atmosphere [Pa], a definition
 _DEFAULT_TEMPERATURE = {"air": 288.15, "water": 293.15}  # 15 and 20 degC, stated in the manual
+_TEMPERATURE = Interval(1.0, 6000.0)
 _WATER = Interval(273.15, 423.15)
+_WATER_PRESSURE = Interval(0.0, 1e8, open_low=True)  # density is off by 1 % there (see tests)
+_HUMIDITY = Interval(0.0, 1.0)
+_NAME = re.compile(r"[A-Za-z0-9][A-Za-z0-9(),. -]{0,40}")  # of one fluid: no mixture, no backend
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False)
 class Fluid:
     """Properties of a fluid; floats, or arrays when temperature or pressure are arrays.
 
@@ -38,6 +44,11 @@ class Fluid:
     speed_of_sound: Any = None
     heat_capacity_ratio: Any = None
     relations: tuple[Relation, ...] = ()
+
+    @property
+    def source(self) -> tuple[str, ...]:
+        """The keys of the sources the properties came from, each once."""
+        return tuple(dict.fromkeys(r.source for r in self.relations))
 
     def properties(self) -> dict[str, Any]:
         """Return the properties that are known, by name."""
@@ -66,13 +77,14 @@ def _air(shape: Shape, t: Floats, p: Floats) -> Fluid:
 
 
 def _water(shape: Shape, t: Floats, p: Floats) -> Fluid:
-    arrays.check("temperature", t, _WATER)
+    arrays.check("temperature", shape(t), _WATER)
+    arrays.check("pressure", shape(p), _WATER_PRESSURE)
     boiling = p < water.saturation_pressure(t)
     if boiling.any():
         i = int(np.argmax(boiling))
         raise InputError(
             "fluid",
-            f"water at {t[i]:.6g} K and {p[min(i, p.size - 1)]:.6g} Pa, which is steam",
+            f"water at {t[i]:.6g} K and {p[i]:.6g} Pa, which is steam",
             "liquid water",
             "name the fluid 'Water' of the property library for steam",
         )
@@ -90,50 +102,80 @@ def _water(shape: Shape, t: Floats, p: Floats) -> Fluid:
     )
 
 
+def _library_name(name: str) -> str:
+    """Return the library's own name of a fluid; it knows aliases like CO2."""
+    from CoolProp import CoolProp
+
+    try:
+        if _NAME.fullmatch(name):
+            return str(CoolProp.get_fluid_param_string(name, "name"))
+    except ValueError:  # no such fluid: below
+        pass
+    near = nearest(name[:60], ["air", "water", "humid air", *CoolProp.FluidsList()])
+    raise InputError(
+        "fluid.name",
+        repr(name[:60]),
+        "air, water, humid air, or a fluid of the property library",
+        f"did you mean {near!r}?" if near else "",
+    )
+
+
+def _look_up(name: str, t: Floats, p: Floats) -> Callable[[str], Floats]:
+    from CoolProp import CoolProp
+
+    def get(key: str) -> Floats:
+        if t.size == 0:
+            return np.empty(0)
+        values = np.atleast_1d(CoolProp.PropsSI(key, "T", t, "P", p, name))
+        bad = ~np.isfinite(values)
+        if bad.any():  # arrays get infinities where a number raises and says why
+            i = int(np.argmax(bad))
+            CoolProp.PropsSI(key, "T", float(t[i]), "P", float(p[i]), name)
+            raise ValueError(f"no {key} at {t[i]:.6g} K and {p[i]:.6g} Pa")
+        return values
+
+    return get
+
+
 def _library(name: str, shape: Shape, t: Floats, p: Floats) -> Fluid:
     from CoolProp import CoolProp
 
-    known = CoolProp.FluidsList()
-    if name not in known and name.lower() not in {n.lower() for n in known}:
-        near = nearest(name, ["air", "water", "humid air", *known])
-        hint = f"did you mean {near!r}?" if near else ""
-        raise InputError(
-            "fluid.name",
-            repr(name),
-            "air, water, humid air, or a fluid of the property library",
-            hint,
-        )
-
-    def get(key: str) -> Any:
-        values = np.atleast_1d(CoolProp.PropsSI(key, "T", t, "P", p, name))
-        if not np.isfinite(values).all():  # arrays get infinities where a number would raise
-            CoolProp.PropsSI(key, "T", float(t[0]), "P", float(p[0]), name)
-            raise ValueError(f"no {key} at one of the states")
-        return shape(values)
-
-    for key, field, values in (("T", "temperature", t), ("P", "pressure", p)):
-        low = CoolProp.PropsSI("TMIN", name) if key == "T" else 0.0
-        high = CoolProp.PropsSI(f"{key}MAX", name)
-        arrays.check(field, values, Interval(low, high))
-    keys = {
-        "density": "DMASS", "dynamic_viscosity": "VISCOSITY", "specific_heat": "CPMASS",
-        "thermal_conductivity": "CONDUCTIVITY", "prandtl": "PRANDTL",
-        "speed_of_sound": "SPEED_OF_SOUND",
-    }  # fmt: skip
+    name = _library_name(name)
+    lowest, hottest, highest = (CoolProp.PropsSI(k, name) for k in ("TMIN", "TMAX", "PMAX"))
+    arrays.check("temperature", shape(t), Interval(lowest, hottest))
+    arrays.check("pressure", shape(p), Interval(0.0, highest, open_low=True))
+    get = _look_up(name, t, p)
     try:
-        found = {n: get(k) for n, k in keys.items()}
+        rho, mu = get("DMASS"), get("VISCOSITY")
     except ValueError as error:
-        reason = str(error).split(" : ")[0].replace("\n", " ")[:160]
+        reason = str(error).split(" : ")[0][:160]
+        if "model is not available" in reason:
+            reason = "the library has no viscosity of it: give density and dynamic_viscosity"
         raise InputError(
             "fluid", f"{name} at this state", "a state the library covers", reason
         ) from None
-    nu = shape(np.atleast_1d(found["dynamic_viscosity"]) / np.atleast_1d(found["density"]))
+    optional = {
+        "specific_heat": "CPMASS", "thermal_conductivity": "CONDUCTIVITY", "prandtl": "PRANDTL",
+        "speed_of_sound": "SPEED_OF_SOUND", "heat_capacity_ratio": "CVMASS",
+    }  # fmt: skip
+    found: dict[str, Floats] = {}
+    for field, key in optional.items():
+        try:
+            found[field] = get(key)
+        except ValueError:  # no such model of this fluid: the property stays unknown
+            continue
+    if {"specific_heat", "heat_capacity_ratio"} <= found.keys():
+        found["heat_capacity_ratio"] = found["specific_heat"] / found["heat_capacity_ratio"]
+    else:
+        found.pop("heat_capacity_ratio", None)
     return Fluid(
         name,
         shape(t),
         shape(p),
-        kinematic_viscosity=nu,
-        **found,
+        shape(rho),
+        shape(mu),
+        shape(mu / rho),
+        **{field: shape(values) for field, values in found.items()},
         relations=(relation("fluids", "library"),),
     )
 
@@ -142,6 +184,8 @@ def _humid_air(shape: Shape, t: Floats, p: Floats, humidity: Floats) -> Fluid:
     from CoolProp import HumidAirProp
 
     def get(key: str) -> Floats:
+        if t.size == 0:
+            return np.empty(0)
         return np.atleast_1d(HumidAirProp.HAPropsSI(key, "T", t, "P", p, "R", humidity))
 
     try:
@@ -165,33 +209,68 @@ def _humid_air(shape: Shape, t: Floats, p: Floats, humidity: Floats) -> Fluid:
     )
 
 
-def _given(
-    given: dict[str, FloatLike], temperature: FloatLike | None, pressure: FloatLike | None
-) -> Fluid:
+def _given(given: dict[str, FloatLike], state: dict[str, FloatLike]) -> Fluid:
     if len(given) > 2:
         raise InputError("fluid", ", ".join(given), "two of density and the two viscosities")
     if set(given) == {"density"} or set(given) == {"dynamic_viscosity"}:
         raise InputError(
             "fluid", f"{next(iter(given))} alone", "a kinematic viscosity, or two properties"
         )
-    shape, flat = arrays.columns(**{n: (v, POSITIVE) for n, v in given.items()})
-    v = dict(zip(given, flat, strict=True))
+    shape, flat = arrays.columns(**{n: (v, AMOUNT) for n, v in {**given, **state}.items()})
+    v = dict(zip([*given, *state], flat, strict=True))
     if "kinematic_viscosity" not in v:
         v["kinematic_viscosity"] = v["dynamic_viscosity"] / v["density"]
     elif "dynamic_viscosity" in v:
         v["density"] = v["dynamic_viscosity"] / v["kinematic_viscosity"]
     elif "density" in v:
         v["dynamic_viscosity"] = v["kinematic_viscosity"] * v["density"]
-    return Fluid("given properties", temperature, pressure, **{n: shape(x) for n, x in v.items()})
+    return Fluid("given properties", **{n: shape(x) for n, x in v.items()})
 
 
-def _pressure(pressure: FloatLike | None, gauge: FloatLike | None, ambient: FloatLike) -> FloatLike:
-    if gauge is None:
-        return ambient if pressure is None else pressure
+def _pressure(
+    pressure: FloatLike | None, gauge: FloatLike | None, ambient: FloatLike | None
+) -> FloatLike | None:
+    """Return the absolute pressure, or None when nothing fixes it."""
     if pressure is not None:
-        raise InputError("gauge_pressure", "pressure as well", "either pressure or gauge_pressure")
-    above = arrays.check("gauge_pressure", gauge, Interval(-ATMOSPHERE, open_low=True))
-    return np.asarray(above + np.asarray(ambient, dtype=np.float64))
+        for name, other in (("gauge_pressure", gauge), ("ambient_pressure", ambient)):
+            if other is not None:
+                raise InputError(name, "pressure as well", f"either pressure or {name}")
+        return pressure
+    if gauge is None:
+        return ambient
+    shape, (above, outside) = arrays.columns(
+        gauge_pressure=(gauge, SIGNED),
+        ambient_pressure=(ATMOSPHERE if ambient is None else ambient, AMOUNT),
+    )
+    total = above + outside
+    if (total <= 0.0).any():
+        lowest = f"{float(total[total <= 0.0][0]):.6g} Pa absolute"
+        raise InputError("gauge_pressure", lowest, "more than minus the ambient pressure")
+    result: FloatLike = shape(total)
+    return result
+
+
+def _named(
+    name: str, temperature: FloatLike | None, pressure: FloatLike | None, humidity: FloatLike | None
+) -> Fluid:
+    start = _DEFAULT_TEMPERATURE.get(name, 293.15)
+    arguments: dict[str, tuple[FloatLike, Interval]] = {
+        "temperature": (start if temperature is None else temperature, _TEMPERATURE),
+        "pressure": (ATMOSPHERE if pressure is None else pressure, AMOUNT),
+    }
+    if name == "humid air":
+        if humidity is None:
+            raise InputError("relative_humidity", "nothing", "0 to 1 for humid air")
+        arguments["relative_humidity"] = (humidity, _HUMIDITY)
+    elif humidity is not None:
+        raise InputError("relative_humidity", f"fluid {name!r}", "the fluid 'humid air'")
+    shape, flat = arrays.columns(**arguments)
+    t, p, *rest = (np.ascontiguousarray(np.broadcast_to(x, shape.size)) for x in flat)
+    if name == "air":
+        return _air(shape, t, p)
+    if name == "water":
+        return _water(shape, t, p)
+    return _humid_air(shape, t, p, rest[0]) if rest else _library(name, shape, t, p)
 
 
 def fluid(
@@ -200,6 +279,7 @@ def fluid(
     temperature: FloatLike | None = None,
     pressure: FloatLike | None = None,
     gauge_pressure: FloatLike | None = None,
+    ambient_pressure: FloatLike | None = None,
     altitude: FloatLike | None = None,
     relative_humidity: FloatLike | None = None,
     density: FloatLike | None = None,
@@ -213,11 +293,13 @@ def fluid(
     name : str, optional
         ``air`` (ideal gas, Sutherland), ``water`` (liquid), ``humid air``, or a fluid of CoolProp.
     temperature : float or array, optional
-        [K]; 288.15 for air and 293.15 for others by default.
+        [K]; 288.15 for air and 293.15 for others by default. Liquid water: 273.15 to 423.15.
     pressure : float or array, optional
-        Absolute [Pa]; 101325 by default.
+        Absolute [Pa]; 101325 by default. Liquid water: up to 1e8, and above the vapour pressure.
     gauge_pressure : float or array, optional
-        Above the ambient pressure (standard, or that of the altitude) [Pa], instead of pressure.
+        Above the ambient pressure [Pa], instead of pressure.
+    ambient_pressure : float or array, optional
+        Absolute [Pa]; by default one standard atmosphere, or that of the altitude.
     altitude : float or array, optional
         Geopotential [m]: temperature and pressure of the standard atmosphere, for air.
     relative_humidity : float or array, optional
@@ -256,36 +338,24 @@ def fluid(
     }  # fmt: skip
     properties = {n: v for n, v in given.items() if v is not None}
     if properties:
+        extra = {"a name": name, "an altitude": altitude, "a humidity": relative_humidity}
+        for other, value in extra.items():
+            if value is not None:
+                words = f"{other} and {', '.join(properties)}"
+                raise InputError("fluid", words, f"either {other} or properties")
+        total = _pressure(pressure, gauge_pressure, ambient_pressure)
+        state = {"temperature": temperature, "pressure": total}
+        return _given(properties, {n: v for n, v in state.items() if v is not None})
+    if not isinstance(name, str):
         if name is not None:
-            raise InputError(
-                "fluid", f"name and {', '.join(properties)}", "either a name or properties"
-            )
-        return _given(properties, temperature, pressure)
-    if name is None:
+            raise InputError("fluid.name", repr(name)[:60], "the name of a fluid")
         raise InputError("fluid", "neither a name nor properties", "one of the two")
-    ambient: FloatLike = ATMOSPHERE
     if altitude is not None:
-        if name not in ("air", "humid air") or temperature is not None or pressure is not None:
+        fixed = (temperature, pressure, ambient_pressure)
+        if name not in ("air", "humid air") or any(x is not None for x in fixed):
             raise InputError(
                 "altitude", "another fluid, a temperature or a pressure", "air, and altitude alone"
             )
-        temperature, ambient = standard_atmosphere(altitude)
-    start = _DEFAULT_TEMPERATURE.get(name, 293.15)
-    arguments: dict[str, tuple[FloatLike, Interval]] = {
-        "temperature": (start if temperature is None else temperature, Interval(0.0, 6000.0, True)),
-        "pressure": (_pressure(pressure, gauge_pressure, ambient), POSITIVE),
-    }
-    if name == "humid air":
-        if relative_humidity is None:
-            raise InputError("relative_humidity", "nothing", "0 to 1 for humid air")
-        arguments["relative_humidity"] = (relative_humidity, Interval(0.0, 1.0))
-    elif relative_humidity is not None:
-        raise InputError("relative_humidity", f"fluid {name!r}", "the fluid 'humid air'")
-    shape, flat = arrays.columns(**arguments)
-    size = max(x.size for x in flat)
-    t, p, *humidity = (np.ascontiguousarray(np.broadcast_to(x, size)) for x in flat)
-    if name == "air":
-        return _air(shape, t, p)
-    if name == "water":
-        return _water(shape, t, p)
-    return _humid_air(shape, t, p, humidity[0]) if humidity else _library(name, shape, t, p)
+        temperature, ambient_pressure = standard_atmosphere(altitude)
+    absolute = _pressure(pressure, gauge_pressure, ambient_pressure)
+    return _named(name, temperature, absolute, relative_humidity)

@@ -1,61 +1,64 @@
 """Units, parsed at the edge: a number, or a text of a number and a unit, becomes an SI float.
 
 Number and unit are split by one strict pattern, and the unit is taken apart into names and small
-whole exponents, before the unit library sees any of it; it is asked for single names only. A plain
-number and the SI unit itself need no library at all.
+whole exponents. Names come from ``tables/units.toml``, whose factors are exact; the result is the
+double nearest to the exact product. Only a longer name that the table lacks is looked up in the
+unit library (one name at a time, never a number or a combination).
 """
 
 from __future__ import annotations
 
 import math
 import re
-from collections.abc import Iterator
-from functools import cache
+from collections.abc import Iterator, Mapping
+from fractions import Fraction
+from functools import cache, lru_cache
+from numbers import Integral, Real
 from typing import Any
 
 from walllaw import tables
 from walllaw.errors import InputError, nearest
+from walllaw.exact import Number, evaluate
 
-_TEXT = re.compile(
-    r"\s*([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)\s*(.*?)\s*", re.ASCII
-)
-# name with exponent | slash | product | bracket; compiled when the first unit is met
-_PIECE = (
-    r"([A-Za-zµμ°%][A-Za-zµμ°0-9_]*?)(?:(?:\^|\*\*)?(-?[0-9]))?(?=[\s.*·/()]|$)"
-    r"|(/)|([.*·\s]+)|([()])"
-)
+_NUMBER = r"([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)(.*)"
+# a name may hold digits inside (inH2O); its exponent is one digit, so no tower of powers fits
+_FACTOR = r"([A-Za-zµμ°]+(?:[0-9_][A-Za-z]+)*)(?:(?:\^|\*\*)?(-?[1-9]))?"
+_OPERATOR = r"\s*(/)\s*|\s*[*·.]\s*|\s+"
+_GAUGE = r"(psi|[a-zA-Z]{0,2}bar|[a-zA-Z]?Pa|atm)[ _]?\(?(g|gauge)\)?"
 _MAX_TEXT, _MAX_UNIT, _MAX_FACTORS = 80, 40, 8
-_TEMPERATURES = {
-    "degC",
-    "°C",
-    "celsius",
-    "degF",
-    "°F",
-    "fahrenheit",
-    "degree_Celsius",
-    "degree_Fahrenheit",
-}
-_GAUGE = {"psig", "barg", "bar_g", "Pag", "kPag"}
-# what a dimension measures, by the exponents of length, time, mass, temperature
-_WORDS = {
-    (0, 0, 0, 0): "a plain number",
+_SHORT = 3  # shorter names the table lacks are slips (M, C, F), though the unit library knows them
+# superscripts, and the blanks and the minus that copied text holds
+_PLAIN = str.maketrans("²³⁴¹⁻\u2212\u00a0\u2009\u202f", "2341--   ")
+Dimension = tuple[int, int, int, int]  # exponents of length, time, mass, temperature
+_BASE: Mapping[str, Dimension] = {
+    "m": (1, 0, 0, 0), "s": (0, 1, 0, 0), "kg": (0, 0, 1, 0), "K": (0, 0, 0, 1)
+}  # fmt: skip
+_NONE: Dimension = (0, 0, 0, 0)
+_WORDS: Mapping[Dimension, str] = {
+    _NONE: "a plain number",
     (1, 0, 0, 0): "a length",
     (2, 0, 0, 0): "an area",
     (3, 0, 0, 0): "a volume",
     (0, 1, 0, 0): "a time",
     (0, -1, 0, 0): "a rate",
     (1, -1, 0, 0): "a velocity",
+    (1, -2, 0, 0): "an acceleration",
     (3, -1, 0, 0): "a volume flow",
     (0, 0, 1, 0): "a mass",
     (0, -1, 1, 0): "a mass flow",
     (-3, 0, 1, 0): "a density",
     (2, -1, 0, 0): "a kinematic viscosity",
     (-1, -1, 1, 0): "a dynamic viscosity",
+    (1, -2, 1, 0): "a force",
     (-1, -2, 1, 0): "a pressure",
     (-2, -2, 1, 0): "a pressure gradient or specific weight",
+    (2, -2, 1, 0): "an energy",
+    (2, -3, 1, 0): "a power",
     (2, -2, 0, 0): "an energy per mass",
     (2, -3, 0, 0): "a dissipation rate",
     (0, 0, 0, 1): "a temperature",
+    (2, -2, 0, -1): "a specific heat",
+    (1, -3, 1, -1): "a thermal conductivity",
 }
 _HINTS = {
     ("a dynamic viscosity", "a kinematic viscosity"):
@@ -66,129 +69,162 @@ _HINTS = {
     ("a volume flow", "a mass flow"): "this is a volume flow: give it as volume_flow",
     ("a pressure gradient or specific weight", "a density"):
         "this is a specific weight: divide by the acceleration of gravity",
+    ("a density", "a pressure gradient or specific weight"):
+        "this is a density: multiply by the acceleration of gravity",
 }  # fmt: skip
-Dimension = tuple[int, int, int, int]
+
+
+def _spelled(rows: Mapping[str, Any]) -> Iterator[tuple[str, str]]:
+    for key, row in rows.items():
+        yield from ((name, key) for name in (key, *row.get("names", ())))
+
+
+@cache
+def _table() -> dict[str, tuple[Fraction, Dimension]]:
+    """Return every unit name with factor and dimension, those with a prefix included."""
+    raw = tables.read("units.toml")
+    factors: dict[str, Number] = {}
+    plain: dict[str, tuple[Fraction, Dimension]] = {}
+    prefixed: dict[str, tuple[Fraction, Dimension]] = {}
+    prefixes = [(n, Fraction(raw["prefixes"][k]["factor"])) for n, k in _spelled(raw["prefixes"])]
+    for key, row in raw["units"].items():
+        factors[key] = factor = Fraction(evaluate(row["factor"], factors))
+        dimension = _combine(_BASE, row["unit"])
+        for name, _ in _spelled({key: row}):
+            plain[name] = (factor, dimension)
+            if row.get("prefixes"):
+                prefixed.update({p + name: (x * factor, dimension) for p, x in prefixes})
+    return {**prefixed, **plain}
+
+
+@cache
+def _scales() -> dict[str, tuple[Fraction, Fraction]]:
+    """Return every spelling of a temperature scale with zero and factor."""
+    rows = tables.read("units.toml")["scales"]
+    return {
+        name: (Fraction(rows[key]["zero"]), Fraction(rows[key]["factor"]))
+        for name, key in _spelled(rows)
+    }
+
+
+def _combine(base: Mapping[str, Dimension], unit: str) -> Dimension:
+    total = list(_NONE)
+    for name, power in () if unit == "1" else _factors(unit):
+        total = [t + power * e for t, e in zip(total, base[name], strict=True)]
+    return total[0], total[1], total[2], total[3]
+
+
+@lru_cache(maxsize=256)
+def _library(name: str) -> tuple[Fraction, Dimension] | None:
+    """Look a name up in the unit library; None unless it is a plain multiple of SI units.
+
+    Temperatures are left out: those of the table are all there is without an offset.
+    """
+    names = {"meter": "m", "second": "s", "kilogram": "kg"}
+    try:
+        registry = _registry()
+        if registry.parse_unit_name(name)[0][0]:  # a prefix: "cfm" would be a centi-femtometre
+            return None
+        one, two = (registry.Quantity(x, name).to_base_units() for x in (1.0, 2.0))
+        powers = {names[n]: power for n, power in one.unit_items()}
+        whole = {n: int(p) for n, p in powers.items() if p == int(p)}
+    except Exception:  # its parser alone raises some ten classes, none of which tells more
+        return None
+    linear = math.isclose(two.magnitude, 2.0 * one.magnitude, rel_tol=1e-12)  # rounding only
+    if whole != powers or not powers or not linear:
+        return None
+    dimension = (powers.get("m", 0), powers.get("s", 0), powers.get("kg", 0), 0)
+    return Fraction(one.magnitude), (int(dimension[0]), int(dimension[1]), int(dimension[2]), 0)
 
 
 @cache
 def _registry() -> Any:
     import pint
 
-    return pint.UnitRegistry(tables.path("units.txt"), on_redefinition="raise")
+    return pint.UnitRegistry()
 
 
-@cache
-def _names() -> tuple[str, ...]:
-    lines = tables.text("units.txt").splitlines()
-    rows = [line.split(";")[0].split("=") for line in lines if line and line[0] not in "#"]
-    return tuple(
-        name.strip()
-        for row in rows
-        if not row[0].strip().endswith("-")
-        for name in [row[0], *row[2:]]
-    )
-
-
-@cache
-def _single(name: str) -> tuple[float, Dimension] | None:
+def _single(name: str) -> tuple[Fraction, Dimension] | None:
     """Return factor to SI and dimension of a unit name, or None when there is no such unit."""
-    registry = _registry()
-    try:
-        one = registry.Quantity(1.0, registry.parse_units(name.replace("°", "deg")))
-        if name in _TEMPERATURES:
-            return 1.0, (0, 0, 0, 1)
-        base = one.to_base_units()
-        dims = {str(k).strip("[]"): int(v) for k, v in base.dimensionality.items()}
-    except Exception:
+    known = _table()
+    if name in known:
+        return known[name]
+    if len(name) > _SHORT and name.endswith("s") and name[:-1] in known:
+        return known[name[:-1]]
+    if len(name) < _SHORT or not name.isascii() or name.startswith(("delta", "_")):
         return None
-    mass = dims.get("mass", 0)
-    factor = float(base.magnitude) * 1000.0**-mass  # its base of mass is the gram
-    return factor, (dims.get("length", 0), dims.get("time", 0), mass, dims.get("temperature", 0))
+    return _library(name)
 
 
 def _factors(unit: str) -> Iterator[tuple[str, int]]:
     """Take a unit apart into (name, exponent); ValueError for anything but a plain product."""
-    token = re.compile(_PIECE)
-    position, sign, depth, expect = 0, 1, 0, True
-    while position < len(unit):
-        match = token.match(unit, position)
+    factor, operator = re.compile(_FACTOR), re.compile(_OPERATOR)
+    at, sign, outer = (2, -1, 0) if unit.startswith("1/") else (0, 1, 0)
+    while True:
+        if unit[at : at + 1] == "(" and not outer:
+            at, sign, outer = at + 1, 1, sign
+        match = factor.match(unit, at)
         if match is None:
-            raise ValueError(unit[position:])
-        name, power, slash, _, bracket = match.groups()
-        if name:
-            yield name, sign * int(power or 1)
-            if depth == 0:
-                sign = 1
-            expect = False
-        elif slash:
-            if expect and position > 0:
-                raise ValueError(unit[position:])
-            sign, expect = -1, True
-        elif bracket:
-            depth += 1 if bracket == "(" else -1
-            if depth not in (0, 1):
-                raise ValueError(unit[position:])
-            if depth == 0:
-                sign = 1
-        position = match.end()
-    if depth or expect:
-        raise ValueError(unit)
+            raise ValueError(unit)
+        yield match[1], (outer or 1) * sign * int(match[2] or 1)
+        at = match.end()
+        if unit[at : at + 1] == ")" and outer:
+            at, sign, outer = at + 1, outer, 0
+        if at == len(unit) and not outer:
+            return
+        match = operator.match(unit, at)
+        if match is None:
+            raise ValueError(unit)
+        if sign < 0 and not match[1]:  # kg/m s: nobody knows on which side of the slash s is
+            raise ValueError("brackets or a second slash, like kg/(m*s) or kg/m/s")
+        at, sign = match.end(), -1 if match[1] else 1
 
 
-def _normal(unit: str) -> str:
-    unit = unit.removeprefix("1") if unit.startswith("1/") else unit
-    return unit.replace("²", "2").replace("³", "3").replace("⁻", "-").replace("¹", "1")
+def _unknown(name: str, unit: str) -> InputError:
+    if name in _scales():
+        return InputError("unit", repr(unit), "kelvin in a compound unit")
+    if name in ("C", "F"):
+        return InputError("unit", repr(name), "a unit of the manual", f"did you mean 'deg{name}'?")
+    same = [n for n in _table() if n.lower() == name.lower()]
+    near = nearest(name, same or (n for n, _ in _spelled(tables.read("units.toml")["units"])))
+    hint = f"did you mean {near!r}?" if near else ""
+    if near and near.lower() == name.lower():
+        hint += " Capital and small letters differ."
+    return InputError("unit", repr(name), "a unit of the manual", hint)
 
 
-@cache
-def _unit(unit: str) -> tuple[float, Dimension]:
+@lru_cache(maxsize=256)
+def _unit(unit: str) -> tuple[Fraction, Dimension]:
     """Return factor to SI and dimension of a unit text; raises InputError without a field."""
-    parts = []
+    if re.fullmatch(_GAUGE, unit):
+        hint = "give a gauge reading as gauge_pressure, without the g"
+        raise InputError("unit", repr(unit), "an absolute unit", hint)
     try:
-        parts = list(_factors(_normal(unit)))
-    except ValueError:
-        raise InputError("unit", repr(unit), "a unit like m/s, kg/m3, m2.s-2") from None
+        parts = list(_factors(unit))
+    except ValueError as error:
+        accepted = "a unit like m/s, kg/m3, m2.s-2" if str(error) == unit else str(error)
+        raise InputError("unit", repr(unit), accepted) from None
     if len(parts) > _MAX_FACTORS:
         raise InputError("unit", repr(unit), f"at most {_MAX_FACTORS} factors")
-    factor, dimension = 1.0, [0, 0, 0, 0]
+    factor, total = Fraction(1), list(_NONE)
     for name, power in parts:
-        if name in _GAUGE:
-            raise InputError(
-                "unit", repr(name), "an absolute unit", "use gauge_pressure for a gauge reading"
-            )
-        if name == "%":
-            factor *= 0.01**power
-            continue
-        if name in _TEMPERATURES and len(parts) > 1:
-            raise InputError("unit", repr(unit), "K in a compound unit")
-        known = _single(name)
+        known = None if name in _scales() else _single(name)
         if known is None:
-            near = nearest(name, _names())
-            raise InputError(
-                "unit",
-                repr(name),
-                "a unit of the manual",
-                f"did you mean {near!r}?" if near else "",
-            )
+            raise _unknown(name, unit)
         factor *= known[0] ** power
-        dimension = [d + power * e for d, e in zip(dimension, known[1], strict=True)]
-    return factor, (dimension[0], dimension[1], dimension[2], dimension[3])
+        total = [t + power * e for t, e in zip(total, known[1], strict=True)]
+    return factor, (total[0], total[1], total[2], total[3])
 
 
-def _celsius(value: float, unit: str) -> float:
-    """Turn a temperature reading into kelvin; the scales are definitions."""
-    if "C" in unit or unit == "celsius":
-        return value + 273.15
-    return (value + 459.67) * 5.0 / 9.0
-
-
-def _number(value: float | int, field: str) -> float:
+def _finite(value: Real | Fraction, field: str, given: str) -> float:
     try:
         number = float(value)
     except OverflowError:
         number = math.inf
     if not math.isfinite(number):
-        raise InputError(field, f"{value!r}"[:40], "a finite number")
+        raise InputError(field, given[:60], "a finite number")
+    if number == 0.0 and value != 0:
+        raise InputError(field, given[:60], "a number of usual size")
     return number
 
 
@@ -207,12 +243,16 @@ def quantity(value: object, unit: str, field: str) -> float:
     Returns
     -------
     float
-        The value in that SI unit.
+        The value in that SI unit, the double nearest to the exact product.
 
     Raises
     ------
     InputError
         If the text is no number and unit, the unit is not known, or it measures something else.
+
+    References
+    ----------
+    bipm-2019, nist-sp811-2008
 
     Examples
     --------
@@ -221,37 +261,88 @@ def quantity(value: object, unit: str, field: str) -> float:
     >>> quantity("25 degC", "K", "fluid.temperature")
     298.15
     """
-    if isinstance(value, bool) or not isinstance(value, (int, float, str)):
+    if isinstance(value, str):
+        return _text(value, unit, field)
+    if isinstance(value, bool) or not isinstance(value, Real):
         raise InputError(field, repr(value)[:60], f"a number, or a text like {_example(unit)}")
-    if not isinstance(value, str):
-        return _number(value, field)
-    match = _TEXT.fullmatch(value) if len(value) <= _MAX_TEXT else None
-    if match is None or len(match[2]) > _MAX_UNIT:
+    # the digits of a huge integer cannot always be printed
+    return _finite(value, field, "a huge number" if isinstance(value, Integral) else repr(value))
+
+
+def _text(value: str, unit: str, field: str) -> float:
+    text = value.translate(_PLAIN).strip() if len(value) <= _MAX_TEXT else ""
+    match = re.fullmatch(_NUMBER, text)
+    if match is None or len(match[2].strip()) > _MAX_UNIT:
         raise InputError(field, repr(value[:60]), f"a number and a unit, like {_example(unit)}")
-    number, given = _number(float(match[1]), field), match[2]
-    if given in ("", unit):
-        return number
+    number, given = Fraction(match[1]), match[2].strip()
+    if not given or (given == unit and unit != "1"):
+        return _finite(number, field, repr(value))
     if unit == "1" and given == "%":
-        return number / 100.0
-    return _convert(number, given, unit, field, value)
+        return _finite(number / 100, field, repr(value))
+    return _finite(_convert(number, given, unit, field, value), field, repr(value))
 
 
-def _convert(number: float, given: str, unit: str, field: str, text: str) -> float:
-    try:
-        factor, dimension = _unit(given)
-    except InputError as error:
-        raise InputError(
-            field, f"{text!r}: unit {error.given}", error.accepted, error.hint
-        ) from None
-    wanted = (0, 0, 0, 0) if unit == "1" else _unit(unit)[1]
+def _convert(number: Fraction, given: str, unit: str, field: str, text: str) -> Fraction:
+    wanted = _NONE if unit == "1" else _unit(unit)[1]
+    zero, factor = _scales().get(given, (Fraction(0), Fraction(1)))
+    dimension = _BASE["K"]
+    if given not in _scales():
+        try:
+            factor, dimension = _unit(given)
+        except InputError as error:
+            raise InputError(
+                field, f"{text!r}: unit {error.given}", error.accepted, error.hint
+            ) from None
     if dimension != wanted:
-        words = _WORDS.get(dimension, "something else")
-        accepted = _WORDS.get(wanted, unit)
+        words, accepted = _words(dimension), _words(wanted)
         hint = _HINTS.get((words, accepted), "")
         raise InputError(field, f"{text!r}, {words}", f"{accepted} ({_example(unit)})", hint)
-    result = _celsius(number, given) if given in _TEMPERATURES else number * factor
-    return _number(result, field)
+    return (number + zero) * factor
+
+
+def _words(dimension: Dimension) -> str:
+    if dimension in _WORDS:
+        return _WORDS[dimension]
+    powers = zip(_BASE, dimension, strict=True)
+    return "something in " + " ".join(f"{n}{p if p != 1 else ''}" for n, p in powers if p)
 
 
 def _example(unit: str) -> str:
     return '"5 %" or 0.05' if unit == "1" else f'"1.5 {unit}"'
+
+
+def fraction(value: object, field: str) -> float:
+    """Return a fraction from 0 to 1 (an intensity, a relative humidity).
+
+    Raises
+    ------
+    InputError
+        If it is none; a bare ``5`` is asked back as ``5 %``.
+
+    Examples
+    --------
+    >>> fraction("5 %", "inlet.intensity")
+    0.05
+    >>> fraction(5, "inlet.intensity")
+    Traceback (most recent call last):
+    walllaw.errors.InputError: inlet.intensity: got 5; accepted: from 0 to 1; did you mean "5 %"?
+    """
+    number = quantity(value, "1", field)
+    if not 0.0 <= number <= 1.0:
+        percent = 1.0 < number <= 100.0 and not str(value).rstrip().endswith(("%", "percent"))
+        hint = f'did you mean "{number:g} %"?' if percent else ""
+        given = repr(value) if isinstance(value, str) else f"{number:g}"
+        raise InputError(field, given, "from 0 to 1", hint)
+    return number
+
+
+def format_quantity(value: float, unit: str, digits: int = 5) -> str:
+    """Return a number with its unit as text, rounded to significant digits.
+
+    Examples
+    --------
+    >>> format_quantity(1.5e-05, "m2/s"), format_quantity(0.0210000, "m"), format_quantity(0.5, "1")
+    ('1.5e-05 m2/s', '0.021 m', '0.5')
+    """
+    number = f"{value + 0.0:.{digits}g}"  # adding zero turns -0 into 0
+    return number if unit == "1" else f"{number} {unit}"

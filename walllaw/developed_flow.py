@@ -182,8 +182,8 @@ class DevelopedFlow:
     def si(self, size: FloatLike, kinematic_viscosity: FloatLike) -> dict[str, Any]:
         """Return the flow in SI units for a radius or half height and a viscosity.
 
-        Keys: friction_velocity, bulk_velocity, centreline_velocity [m/s], flow_rate [m3/s; m2/s for
-        a plane passage], kinematic_pressure_gradient (-dp/dx/rho, m/s2), wall_strain_rate [1/s].
+        Keys: friction_velocity, bulk_velocity, centreline_velocity [m/s], volume_flow [m3/s; m2/s
+        in plane passages], kinematic_pressure_gradient (-dp/dx/rho, m/s2), wall_strain_rate [1/s].
         """
         r = arrays.check("size", size, POSITIVE)
         nu = arrays.check("kinematic_viscosity", kinematic_viscosity, POSITIVE)
@@ -194,7 +194,7 @@ class DevelopedFlow:
             "friction_velocity": u_tau,
             "bulk_velocity": self.bulk_u_plus * u_tau,
             "centreline_velocity": self.centreline_u_plus * u_tau,
-            "flow_rate": self.bulk_u_plus * u_tau * area,
+            "volume_flow": self.bulk_u_plus * u_tau * area,
             "kinematic_pressure_gradient": sides * u_tau * u_tau / r,
             "wall_strain_rate": u_tau * u_tau / nu,
         }
@@ -229,12 +229,18 @@ def _nodes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Grid, Floats, Flo
     return grid, slope, nu_t, velocity
 
 
+def _lines(values: Floats) -> Floats:
+    """Return (cases, panels, nodes) as (cases, all nodes)."""
+    cases, panels, nodes = values.shape
+    return np.ascontiguousarray(values).reshape(cases, panels * nodes)
+
+
 def _profiles(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, ...]:
     grid, slope, nu_t, velocity = _nodes(model, re_tau, ks)
     length = np.sqrt(nu_t / np.maximum(slope, 1e-300))
     found = (grid.eta, grid.y_plus, velocity, slope, nu_t, length, model.stress(grid))
     # panels beyond Re_tau have no width: their nodes repeat the last edge and are kept, harmlessly
-    return tuple(np.ascontiguousarray(v).reshape(re_tau.size, -1) for v in found)
+    return tuple(_lines(v) for v in found)
 
 
 def _fluxes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
@@ -280,7 +286,7 @@ def _nusselt(
     # with bulk 1, the flux at the wall is 1/eigenvalue of one more round
     again = running(inside(theta) / (area * conductivity), grid)
     temperature = 1.0 / (size * total(grid.width * weight * u * again))
-    return flux, temperature, uniform.reshape(re_tau.size, -1), theta.reshape(re_tau.size, -1)
+    return flux, temperature, _lines(uniform), _lines(theta)
 
 
 def driven(
@@ -289,7 +295,7 @@ def driven(
     kinematic_viscosity: FloatLike,
     *,
     bulk_velocity: FloatLike | None = None,
-    flow_rate: FloatLike | None = None,
+    volume_flow: FloatLike | None = None,
     kinematic_pressure_gradient: FloatLike | None = None,
 ) -> dict[str, Any]:
     """Return the Reynolds number that :func:`developed` takes, from what drives the flow.
@@ -302,7 +308,7 @@ def driven(
         Radius of the pipe, half height, depth of the open channel, half gap [m].
     kinematic_viscosity : float or array
         [m2/s].
-    bulk_velocity, flow_rate, kinematic_pressure_gradient : float or array, optional
+    bulk_velocity, volume_flow, kinematic_pressure_gradient : float or array, optional
         One of them: [m/s]; [m3/s], for a plane passage per width [m2/s]; -(dp/dx)/rho [m/s2], for
         an open channel gravity times slope.
 
@@ -329,7 +335,7 @@ def driven(
         raise unknown_name("geometry", geometry, GEOMETRIES)
     given = {
         "bulk_velocity": bulk_velocity,
-        "flow_rate": flow_rate,
+        "volume_flow": volume_flow,
         "kinematic_pressure_gradient": kinematic_pressure_gradient,
     }
     named = {n: v for n, v in given.items() if v is not None}
@@ -343,7 +349,7 @@ def driven(
     pipe = geometry == "pipe"
     if name == "kinematic_pressure_gradient":
         return {"re_tau": shape(np.sqrt(x * r / (2.0 if pipe else 1.0)) * r / nu)}
-    if name == "flow_rate":
+    if name == "volume_flow":
         x = x / (np.pi * r * r if pipe else (r if geometry == "open-channel" else 2.0 * r))
     return {"reynolds": shape(x * (2.0 if pipe else 4.0) * r / nu)}
 

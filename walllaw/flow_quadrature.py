@@ -73,7 +73,8 @@ def grid(re_tau: Floats, split: float) -> Grid:
 
 def total(values: Floats) -> Floats:
     """Sum over panels and nodes; rows are contiguous, so the order is the same for any number."""
-    return np.asarray(values.reshape(values.shape[0], -1).sum(axis=1))
+    cases, panels, nodes = values.shape
+    return np.asarray(values.reshape(cases, panels * nodes).sum(axis=1))
 
 
 def running(values: Floats, nodes: Grid) -> Floats:

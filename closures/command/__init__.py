@@ -15,6 +15,7 @@ COMMANDS = {
     "inlet": "Inlet values from flags, for one closure or for all.",
     "wall": "Friction velocity, first cell, layers and wall-function values from flags.",
     "profile": "A law of the wall as a table or a picture.",
+    "developed": "Developed flow by mixing length: friction, profile, friction chart.",
     "coefficients": "List and show coefficient sets with the source of each number.",
 }
 CAUTION = (

@@ -1,0 +1,104 @@
+"""The command ``developed``: forms, drives, what is refused."""
+
+from __future__ import annotations
+
+import csv
+import io
+import json
+
+import pytest
+
+from closures.command import run
+from walllaw import developed
+
+
+def out(capsys, *arguments: str) -> str:
+    assert run(["developed", *arguments]) == 0
+    return capsys.readouterr().out
+
+
+@pytest.mark.parametrize("geometry", ["pipe", "channel", "open-channel", "couette", "annulus"])
+def test_every_geometry_and_form(geometry, capsys):
+    extra = ["--radius-ratio", "0.4"] if geometry == "annulus" else []
+    text = out(capsys, geometry, "--reynolds", "2e5", *extra)
+    assert max(map(len, text.splitlines())) <= 80
+    assert "darcy_friction" in text
+    assert "engineer decide" in text
+    assert "| darcy_friction |" in out(
+        capsys, geometry, "--reynolds", "2e5", "--format", "markdown", *extra
+    )
+    data = json.loads(out(capsys, geometry, "--reynolds", "2e5", "--format", "json", *extra))
+    assert data["summary"]["reynolds"]["value"] == pytest.approx(2e5, rel=1e-10)
+    if geometry != "annulus":
+        flow = developed(
+            geometry,
+            reynolds=2e5,
+            mixing_length="linear" if geometry == "couette" else "nikuradse",
+        )
+        assert data["summary"]["darcy_friction"]["value"] == flow.darcy_friction
+        rows = list(csv.DictReader(io.StringIO(
+            out(capsys, geometry, "--reynolds", "2e5", "--format", "csv")
+        )))  # fmt: skip
+        assert float(rows[-1]["u_plus"]) == pytest.approx(flow.centreline_u_plus, rel=1e-6)
+        eta = [float(r["eta"]) for r in rows]
+        assert eta == sorted(set(eta))
+
+
+def test_units_and_every_drive_agree(capsys):
+    case = ["pipe", "--diameter", "260 mm", "--fluid", "water", "--temperature", "8 degC",
+            "--roughness", "0.045 mm", "--format", "json"]  # fmt: skip
+    first = json.loads(out(capsys, *case, "--bulk-velocity", "1.9 m/s"))["summary"]
+    for drive, unit in (("volume_flow", "m3/s"), ("pressure_gradient", "Pa/m")):
+        value = f"{first[drive]['value']!r} {unit}"
+        again = json.loads(out(capsys, *case, f"--{drive.replace('_', '-')}", value))["summary"]
+        for name, row in first.items():
+            assert again[name]["value"] == pytest.approx(row["value"], rel=1e-10), name
+    assert "nusselt_uniform_flux" in out(capsys, "pipe", "--re-tau", "2000", "--prandtl", "0.7")
+
+
+@pytest.mark.parametrize("arguments", [["pipe", "--moody"], ["channel", "--re-tau", "900"]])
+@pytest.mark.parametrize("form", ["svg", "png"])
+def test_pictures_are_the_same_every_time(arguments, form, tmp_path):
+    files = [tmp_path / f"{i}.{form}" for i in range(2)]
+    for file in files:
+        assert run(["developed", *arguments, "--format", form, "-o", str(file)]) == 0
+    assert files[0].read_bytes() == files[1].read_bytes()
+    assert files[0].stat().st_size > 5000
+
+
+def test_the_chart_as_a_table(capsys):
+    rows = list(csv.DictReader(io.StringIO(out(capsys, "--moody", "--format", "csv"))))
+    assert {r["relative_roughness"] for r in rows} == {"0.0", "1e-05", "0.0001", "0.001", "0.01"}
+    for row in rows:
+        if float(row["reynolds"]) >= 1e5 and float(row["relative_roughness"]) <= 1e-3:
+            ratio = float(row["darcy_friction"]) / float(row["colebrook"])
+            assert abs(ratio - 1.0) < 0.03
+    for form in ("text", "markdown", "json"):
+        assert "colebrook" in out(capsys, "--moody", "--format", form)
+
+
+def test_a_range_left_is_said(capsys):
+    assert run(["developed", "pipe", "--reynolds", "3000"]) == 0
+    assert "warning: Nikuradse" in capsys.readouterr().err
+
+
+@pytest.mark.parametrize(
+    ("arguments", "words"),
+    [(["tube", "--reynolds", "1e5"], "geometry"), (["pipe"], "--re-tau"), (["pipe", "--bulk-velocity", "3"], "--diameter"),
+     (["pipe", "--reynolds", "1e5", "--re-tau", "5"], "--re-tau too"), (["channel", "--moody"], "pipe"),
+     (["pipe", "--reynolds", "1e5", "--radius-ratio", "0.5"], "--radius-ratio"), (["annulus", "--reynolds", "1e5"], "--radius-ratio"),
+     (["pipe", "--reynolds", "nan"], "reynolds"), (["pipe", "--reynolds", "1e5", "--mixing-length", "cass"], "did you mean 'cess'"),
+     (["pipe", "--diameter", "1 kg", "--fluid", "air", "--bulk-velocity", "3"], "a length"),
+     (["pipe", "--diameter", "1", "--kinematic-viscosity", "1e-5", "--pressure-gradient", "3"], "density"),
+     (["pipe", "--fluid", "air", "--density", "3", "--reynolds", "1e5"], "--fluid"),
+     (["pipe", "--temperature", "300 K", "--reynolds", "1e5"], "--fluid"),
+     (["pipe", "--reynolds", "1e5", "--roughness", "1 mm"], "--diameter"),
+     (["annulus", "--reynolds", "1e5", "--radius-ratio", "0.5", "--format", "svg"], "annulus"),
+     (["couette", "--height", "0.1", "--fluid", "air", "--pressure-gradient", "3"], "bulk_velocity")],
+)  # fmt: skip
+def test_wrong_flags(arguments, words, capsys):
+    assert run(["developed", *arguments]) == 2
+    captured = capsys.readouterr()
+    assert captured.out == ""
+    assert words in captured.err
+    assert captured.err.count("\n") == 1
