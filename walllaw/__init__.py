@@ -25,6 +25,7 @@ if TYPE_CHECKING:
     from walllaw.composite import Composite, WithWake
     from walllaw.developed_flow import DevelopedFlow, developed
     from walllaw.errors import InputError, RangeWarning, TableError
+    from walllaw.flow_family import FlowFamily
     from walllaw.fraction_laws import ChauhanMonkewitzNagib, Musker, SpalartAllmaras
     from walllaw.law import Law
     from walllaw.laws import (
@@ -38,11 +39,13 @@ if TYPE_CHECKING:
         ViscousSublayer,
     )
     from walllaw.log_law_constants import log_law_pair, log_law_pairs
+    from walllaw.two_wall_flow import annulus_flow, couette_poiseuille_flow
 
 _HOMES = {
     "ChauhanMonkewitzNagib": "walllaw.fraction_laws",
     "Composite": "walllaw.composite",
     "DevelopedFlow": "walllaw.developed_flow",
+    "FlowFamily": "walllaw.flow_family",
     "InputError": "walllaw.errors",
     "Law": "walllaw.law",
     "LogLaw": "walllaw.laws",
@@ -58,6 +61,8 @@ _HOMES = {
     "VanDriest": "walllaw.laws",
     "ViscousSublayer": "walllaw.laws",
     "WithWake": "walllaw.composite",
+    "annulus_flow": "walllaw.two_wall_flow",
+    "couette_poiseuille_flow": "walllaw.two_wall_flow",
     "developed": "walllaw.developed_flow",
     "log_law_pair": "walllaw.log_law_constants",
     "log_law_pairs": "walllaw.log_law_constants",
@@ -80,6 +85,7 @@ __all__ = [
     "ChauhanMonkewitzNagib",
     "Composite",
     "DevelopedFlow",
+    "FlowFamily",
     "InputError",
     "Law",
     "LogLaw",
@@ -95,7 +101,9 @@ __all__ = [
     "VanDriest",
     "ViscousSublayer",
     "WithWake",
+    "annulus_flow",
     "compressible",
+    "couette_poiseuille_flow",
     "developed",
     "disc",
     "ducts",

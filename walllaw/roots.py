@@ -5,6 +5,7 @@ These are kernels: flat float64 arrays in and out, already checked by the caller
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from fractions import Fraction
 from functools import cache
 
@@ -25,6 +26,32 @@ def _inverse_slope(slope: float) -> tuple[float, float]:
     exact = _LN10 / Fraction(slope)
     head = float(Fraction(round(exact * 2**_HEAD_BITS), 2**_HEAD_BITS))
     return head, float(exact - Fraction(head))
+
+
+def secant(miss: Callable[[Floats], Floats], start: Floats, rounds: int = 24) -> Floats:
+    """Return the roots of near-linear functions, one for each element, by the secant method.
+
+    An element that has converged stays as it is, so that its bits do not depend on its neighbours.
+
+    Examples
+    --------
+    >>> secant(lambda x: x * x - np.array([2.0, 9.0]), np.array([1.0, 2.0]))
+    array([1.41421356, 3.        ])
+    """
+    a, b = start, start + 0.05
+    fa, fb = miss(a), miss(b)
+    active = np.ones(b.shape, dtype=bool)
+    for _ in range(rounds):
+        change = fb - fa
+        step = fb * (b - a) / np.where(change == 0.0, 1.0, change)
+        step = np.clip(np.where((change != 0.0) & active, step, 0.0), -1.0, 1.0)
+        a, fa, b = np.where(active, b, a), np.where(active, fb, fa), b - step
+        # the error after a step is near the product of the last two: below 1e-15
+        active &= np.abs(step) > 1e-9
+        if not active.any():
+            break
+        fb = np.where(active, miss(b), fb)
+    return b
 
 
 def add_log10(x: Floats, slope: float, y: Floats) -> Floats:

@@ -16,10 +16,9 @@ from walllaw.arrays import FloatLike, Floats, Interval
 from walllaw.errors import InputError
 from walllaw.flow_quadrature import Grid, grid, running, total
 from walllaw.mixing_lengths import MixingLength, MixingModel, constants
+from walllaw.roots import secant
 
-_INNER = 14  # secant steps for the radius of zero stress
-_OUTER = 14  # secant steps for the Reynolds number
-_CASES = 64
+_CASES = 16  # cases in one block: their nodes stay in the first two caches
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -122,15 +121,7 @@ def _zero_stress(model: MixingModel, ratio: Floats, re_tau: Floats) -> Floats:
         return np.log(core.peak * inner / (shell.peak * outer))
 
     # start: measured zero-stress radii follow (r_m - r_i)/(r_o - r_m) = ratio^0.343
-    a = 0.343 * np.log(ratio)
-    b = a - 0.05
-    fa, fb = miss(a), miss(b)
-    for _ in range(_INNER):
-        flat = fb == fa
-        step = fb * (b - a) / np.where(flat, 1.0, fb - fa)
-        a, fa, b = b, fb, b - np.clip(np.where(flat, 0.0, step), -1.0, 1.0)
-        fb = miss(b)
-    return radius(b)
+    return radius(secant(miss, 0.343 * np.log(ratio)))
 
 
 def _annulus(model: MixingModel, ratio: Floats, re_tau: Floats) -> tuple[Floats, ...]:
@@ -148,15 +139,8 @@ def _reynolds_solve(model: MixingModel, ratio: Floats, reynolds: Floats) -> Floa
         re_tau = np.exp(x)
         return np.log(4.0 * re_tau * _annulus(model, ratio, re_tau)[0] / reynolds)
 
-    a = np.log(np.maximum(np.sqrt(0.75 * reynolds), 0.05 * np.power(reynolds, 0.875)))
-    b = a + 0.05
-    fa, fb = miss(a), miss(b)
-    for _ in range(_OUTER):
-        flat = fb == fa
-        step = fb * (b - a) / np.where(flat, 1.0, fb - fa)
-        a, fa, b = b, fb, b - np.clip(np.where(flat, 0.0, step), -1.0, 1.0)
-        fb = miss(b)
-    return np.exp(b)
+    start = np.maximum(np.sqrt(0.75 * reynolds), 0.05 * np.power(reynolds, 0.875))
+    return np.exp(secant(miss, np.log(start)))
 
 
 def annulus_flow(
