@@ -80,12 +80,20 @@ def show(name: str, form: str, output: str) -> int:
     return 0
 
 
-def _coefficient_rows(c: Closure) -> list[tuple[str, str, str, str, str]]:
-    return [(n, f"{k.value:.9g}", k.printed, k.status, k.note) for n, k in c.coefficients.items()]
+_SETS = ("coefficients", "extensions", "alternatives")
 
 
-def _json(c: Closure) -> str:
-    coefficients: dict[str, Any] = {
+def _coefficient_rows(c: Closure, part: str) -> list[tuple[str, str, str, str, str]]:
+    """Return name, value, as printed, status and note; the note starts with a source of its own."""
+    rows = []
+    for n, k in getattr(c, part).items():
+        notes = [k.source if k.source != c.source else "", k.note]
+        rows.append((n, f"{k.value:.9g}", k.printed, k.status, "; ".join(x for x in notes if x)))
+    return rows
+
+
+def _json_set(c: Closure, part: str) -> dict[str, Any]:
+    return {
         n: {
             "value": k.value,
             **{
@@ -94,12 +102,15 @@ def _json(c: Closure) -> str:
                 if getattr(k, f)
             },
         }
-        for n, k in c.coefficients.items()
+        for n, k in getattr(c, part).items()
     }
-    data = {
+
+
+def _json(c: Closure) -> str:
+    data: dict[str, Any] = {
         "id": c.id, "name": c.name, "family": c.family, "variables": list(c.variables),
         "source": c.source, "status": c.status, "summary": c.summary, "evidence": c.evidence,
-        "sigma_convention": c.sigma_convention, "coefficients": coefficients,
+        "sigma_convention": c.sigma_convention, **{part: _json_set(c, part) for part in _SETS},
         "functions": c.functions, "algebra": c.algebra, "wall": c.wall,
         "free_stream": c.free_stream,
         "misprints": list(c.misprints), "use": c.use,
@@ -137,15 +148,16 @@ def _text(c: Closure) -> str:
     ]
     if c.sigma_convention:
         lines.append(f"  sigma is a {c.sigma_convention} of the eddy viscosity")
-    lines.append("coefficients")
-    for n, value, printed, status, note in _coefficient_rows(c):
-        lines.append(f"  {n:<20} {value:>14}   {status}")
-        if "/" in printed or "*" in printed:
-            lines += textwrap.wrap(
-                f"= {printed}", 78, initial_indent=" " * 24, subsequent_indent=" " * 26
-            )
-        if note:
-            lines += textwrap.wrap(note, 78, initial_indent=" " * 24, subsequent_indent=" " * 24)
+    for part in _SETS:
+        rows = _coefficient_rows(c, part)
+        lines += [part] if rows else []
+        for n, value, printed, status, note in rows:
+            lines.append(f"  {n:<20} {value:>14}   {status}")
+            shown = f"= {printed}" if "/" in printed or "*" in printed else ""
+            for text in filter(None, (shown, note)):
+                lines += textwrap.wrap(
+                    text, 78, initial_indent=" " * 24, subsequent_indent=" " * 24
+                )
     lines.append("rules")
     for row in _rules(c):
         lines += wrap(row)
@@ -158,17 +170,18 @@ def _text(c: Closure) -> str:
 def _markdown(c: Closure) -> str:
     from closures.citations import citation
 
-    head = [
-        f"# {c.id}",
-        "",
-        c.name,
-        "",
-        "| coefficient | value | as printed | status | note |",
-        "|---|---:|---|---|---|",
-    ]
-    rows = [
-        f"| {' | '.join(cell.replace('|', chr(92) + '|') for cell in row)} |"
-        for row in _coefficient_rows(c)
-    ]
+    head = [f"# {c.id}", "", c.name]
+    rows = []
+    for part in _SETS:
+        cells = _coefficient_rows(c, part)
+        if cells:
+            rows += [
+                "",
+                f"| {part} | value | as printed | status | note |",
+                "|---|---:|---|---|---|",
+            ]
+        rows += [
+            f"| {' | '.join(cell.replace('|', chr(92) + '|') for cell in row)} |" for row in cells
+        ]
     rules = ["", *(f"- {row}" for row in _rules(c)), "", f"Source: {citation(c.source)}"]
     return "\n".join([*head, *rows, *rules])
