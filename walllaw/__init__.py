@@ -22,44 +22,38 @@ if TYPE_CHECKING:
         stretching,
         wall_function,
     )
-    from walllaw.composite import Composite, WithWake
+    from walllaw.composite import Cess, Composite, WithWake
     from walllaw.developed_flow import DevelopedFlow, developed
     from walllaw.errors import InputError, RangeWarning, TableError
     from walllaw.flow_family import FlowFamily
     from walllaw.fraction_laws import ChauhanMonkewitzNagib, Musker, SpalartAllmaras
     from walllaw.law import Law
-    from walllaw.laws import (
-        LogLaw,
-        PowerLaw,
-        Reichardt,
-        Spalding,
-        ThreeLayer,
-        TwoLayer,
-        VanDriest,
-        ViscousSublayer,
-    )
+    from walllaw.laws import Reichardt, Spalding, VanDriest
+    from walllaw.layered_laws import PowerLaw, ThreeLayer, TwoLayer, ViscousSublayer
     from walllaw.log_law_constants import log_law_pair, log_law_pairs
+    from walllaw.log_layer import LogLaw
     from walllaw.two_wall_flow import annulus_flow, couette_poiseuille_flow
 
 _HOMES = {
+    "Cess": "walllaw.composite",
     "ChauhanMonkewitzNagib": "walllaw.fraction_laws",
     "Composite": "walllaw.composite",
     "DevelopedFlow": "walllaw.developed_flow",
     "FlowFamily": "walllaw.flow_family",
     "InputError": "walllaw.errors",
     "Law": "walllaw.law",
-    "LogLaw": "walllaw.laws",
+    "LogLaw": "walllaw.log_layer",
     "Musker": "walllaw.fraction_laws",
-    "PowerLaw": "walllaw.laws",
+    "PowerLaw": "walllaw.layered_laws",
     "RangeWarning": "walllaw.errors",
     "Reichardt": "walllaw.laws",
     "SpalartAllmaras": "walllaw.fraction_laws",
     "Spalding": "walllaw.laws",
     "TableError": "walllaw.errors",
-    "ThreeLayer": "walllaw.laws",
-    "TwoLayer": "walllaw.laws",
+    "ThreeLayer": "walllaw.layered_laws",
+    "TwoLayer": "walllaw.layered_laws",
     "VanDriest": "walllaw.laws",
-    "ViscousSublayer": "walllaw.laws",
+    "ViscousSublayer": "walllaw.layered_laws",
     "WithWake": "walllaw.composite",
     "annulus_flow": "walllaw.two_wall_flow",
     "couette_poiseuille_flow": "walllaw.two_wall_flow",
@@ -82,6 +76,7 @@ _MODULES = {
 }
 
 __all__ = [
+    "Cess",
     "ChauhanMonkewitzNagib",
     "Composite",
     "DevelopedFlow",

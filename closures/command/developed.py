@@ -142,6 +142,9 @@ def _passage(
     from walllaw.errors import InputError
 
     length = amounts.pop("diameter" if geometry == "pipe" else "height", None)
+    if length is not None and not 0.0 < length < 1e30:
+        name = "--diameter" if geometry == "pipe" else "--height"
+        raise InputError(name, f"{length:g}", "a length above 0")
     nu, density = amounts.pop("kinematic_viscosity", None), amounts.pop("density", None)
     prandtl = amounts.pop("prandtl", None)
     size = None if length is None else length * (1.0 if geometry == "open-channel" else 0.5)
@@ -150,6 +153,8 @@ def _passage(
         if n in amounts
     }  # fmt: skip
     numbers: dict[str, Any] = {n: amounts.pop(n) for n in ("reynolds", "re_tau") if n in amounts}
+    if "volume_flow" in drives and geometry != "pipe":
+        raise InputError("--volume-flow", f"a {geometry}, whose width is not known", "pipe")
     if drives:
         if numbers:
             raise InputError(_flag(next(iter(numbers))), f"{_flag(next(iter(drives)))} too", "one")

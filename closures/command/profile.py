@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import json
+import warnings
 from typing import TYPE_CHECKING, Any
 
 import click
@@ -92,13 +93,20 @@ def command(
         raise InputError("--from", f"{low:g} to {high:g}", "0 < from < to <= 1e12")
     if not 2 <= points <= 100_000:
         raise InputError("--points", str(points), "2 to 100000")
-    if form in ("svg", "png"):
-        from closures import pictures
+    marks = _marks(y_plus, growth, layers) if form in ("svg", "png") else []
+    with warnings.catch_warnings(record=True) as caught:
+        warnings.simplefilter("always")
+        if form in ("svg", "png"):
+            from closures import pictures
 
-        marks = _marks(y_plus, growth, layers)
-        emit_bytes(pictures.wall_law(made, law, low, high, marks, form), output)
+            picture = pictures.wall_law(made, law, low, high, marks, form)
+        else:
+            table = _table(made, low, high, points)
+    for note in dict.fromkeys(str(w.message) for w in caught):
+        click.echo(f"closures: warning: {note}", err=True)
+    if form in ("svg", "png"):
+        emit_bytes(picture, output)
         return 0
-    table = _table(made, low, high, points)
     emit(
         {"text": _text, "csv": _csv, "json": _json, "markdown": _markdown}[form](
             table, made, source

@@ -92,6 +92,8 @@ def test_a_range_left_is_said(capsys):
      (["pipe", "--diameter", "1", "--kinematic-viscosity", "1e-5", "--pressure-gradient", "3"], "density"),
      (["pipe", "--fluid", "air", "--density", "3", "--reynolds", "1e5"], "--fluid"),
      (["pipe", "--temperature", "300 K", "--reynolds", "1e5"], "--fluid"),
+     (["pipe", "--diameter", "0", "--fluid", "air", "--bulk-velocity", "3"], "--diameter"),
+     (["channel", "--height", "0.1", "--fluid", "air", "--volume-flow", "3"], "--volume-flow"),
      (["pipe", "--reynolds", "1e5", "--roughness", "1 mm"], "--diameter"),
      (["annulus", "--reynolds", "1e5", "--radius-ratio", "0.5", "--format", "svg"], "annulus"),
      (["couette", "--height", "0.1", "--fluid", "air", "--pressure-gradient", "3"], "bulk_velocity")],
