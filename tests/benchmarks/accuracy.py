@@ -56,6 +56,45 @@ def polished(f, start):
     return b
 
 
+def by_residual(name, law, exact, y, re):
+    """Yield u+(y+), y+(u+) and u+ of Re_y of a law known as u+(y+) to 50 digits.
+
+    Roots are judged by their residual over the slope: to first order that is their error, and the
+    second order is some 1e-30.
+    """
+    yield f"{name}: u+(y+)", ulps(law.u_plus(y), [exact(mpmath.mpf(t)) for t in y], 0 * y)
+    u = law.u_plus(y)
+    got, slope = law.y_plus(u), law.slope(y)
+    true = [
+        mpmath.mpf(g) - (exact(mpmath.mpf(g)) - mpmath.mpf(v)) / mpmath.mpf(s)
+        for g, v, s in zip(got, u, slope, strict=True)
+    ]
+    yield f"{name}: y+(u+)", ulps(got, true, u / (y * slope))
+    got = law.u_plus_of_re_y(re)
+    rate = 1 + re / got * law.slope(re / got) / got
+    true = [
+        mpmath.mpf(g) * (1 + mpmath.log(exact(mpmath.mpf(r) / mpmath.mpf(g)) / mpmath.mpf(g)) / mpmath.mpf(s))
+        for g, r, s in zip(got, re, rate, strict=True)
+    ]  # fmt: skip
+    yield f"{name}: u+ of Re_y", ulps(got, true, 0 * got)
+
+
+def van_driest(y):
+    """30-digit quadrature of the slope, in decades of y+."""
+
+    def slope(t):
+        length = K * t * -mpmath.expm1(-t / 26)
+        return 2 / (1 + mpmath.sqrt(1 + 4 * length**2))
+
+    edges = [mpmath.mpf(0), *(mpmath.mpf(10) ** j for j in range(-3, 12))]
+    return mpmath.quad(slope, [p for p in edges if p < y] + [y])
+
+
+def power(y):
+    a, n = mpmath.mpf("8.3"), mpmath.mpf(1) / 7
+    return y if y < a ** (1 / (1 - n)) else a * y**n
+
+
 def rows(count: int):
     rng = np.random.default_rng(0)
     y = 10 ** rng.uniform(-8, 12, count)
@@ -79,11 +118,14 @@ def rows(count: int):
             got, [polished(lambda x, t=t: mpmath.log(x * exact(x) / mpmath.mpf(t)), g) for t, g in zip(re, got, strict=True)],
             0 * re,
         )  # fmt: skip
-    law = walllaw.Reichardt(0.41, 5.0)
-    yield "Reichardt: u+(y+)", ulps(law.u_plus(y), [reichardt(mpmath.mpf(t)) for t in y], 0 * y)
+    re = 10 ** rng.uniform(-12, 18, count)
+    yield from by_residual("Reichardt", walllaw.Reichardt(0.41, 5.0), reichardt, y, re)
+    with record():
+        yield from by_residual("Werner-Wengle", walllaw.PowerLaw(), power, y, re)
     log = walllaw.LogLaw(0.41, 5.0)
     re = 10 ** rng.uniform(2, 18, count // 2)
-    got = log.u_plus_of_re_y(re)
+    with record():
+        got = log.u_plus_of_re_y(re)
     yield "log law: u+ of Re_y", ulps(
         got, [polished(lambda x, t=t: x - mpmath.log(mpmath.mpf(t) / x) / K - B, g) for t, g in zip(re, got, strict=True)],
         0 * re,
@@ -96,17 +138,10 @@ def rows(count: int):
         1 / polished(lambda x, r=r, q=q: x + 2 * mpmath.log10(mpmath.mpf(q) / mpmath.mpf("3.7") + mpmath.mpf("2.51") * x / mpmath.mpf(r)), v**-0.5) ** 2
         for r, q, v in zip(re, e, f, strict=True)
     ], 0 * re)  # fmt: skip
-    van_driest = walllaw.VanDriest(0.41, 26.0)
-    few = 10 ** rng.uniform(-6, 8, 60)
-
-    def slope(t):
-        length = K * t * -mpmath.expm1(-t / 26)
-        return 2 / (1 + mpmath.sqrt(1 + 4 * length**2))
-
-    edges = [mpmath.mpf(0), *(mpmath.mpf(10) ** j for j in range(-3, 9))]
-    yield "van Driest: u+(y+) (60 points)", ulps(van_driest.u_plus(few), [
-        mpmath.quad(slope, [p for p in edges if p < t] + [mpmath.mpf(float(t))]) for t in few
-    ], 0 * few)  # fmt: skip
+    few, re = 10 ** rng.uniform(-6, 8, 60), 10 ** rng.uniform(-12, 9, 60)
+    yield from by_residual(
+        "van Driest (60 points)", walllaw.VanDriest(0.41, 26.0), van_driest, few, re
+    )
 
 
 def main() -> None:
