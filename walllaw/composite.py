@@ -233,22 +233,22 @@ class Composite(Bounded):
         return top * log / bottom, slope
 
     def _u(self, y: Floats) -> Floats:
-        n = np.clip(y / self.delta_plus, 1e-12, 1.0)
+        n = np.minimum(y / self.delta_plus, 1.0)
         inner = self.inner._u(np.minimum(y, self.delta_plus))
         return inner + 2.0 * self.Pi / self.kappa * self._wake(n)[0]
 
     def _slope(self, y: Floats) -> Floats:
-        n = np.clip(y / self.delta_plus, 1e-12, 1.0)
+        n = np.minimum(y / self.delta_plus, 1.0)
         wake = 2.0 * self.Pi / (self.kappa * self.delta_plus) * self._wake(n)[1]
         return np.where(y < self.delta_plus, self.inner._slope(y) + wake, 0.0)
 
     def _moment(self, y: Floats) -> Floats:
         """Of the wake alone: the inner law knows its own integral."""
-        n = np.clip(y / self.delta_plus, 1e-12, 1.0)
+        n = np.minimum(np.maximum(y, self.FLOOR) / self.delta_plus, 1.0)
         return 2.0 * self.Pi / self.kappa * n * self._wake(n)[1]
 
     def _inside(self, y: Floats) -> Floats:
-        wake = 2.0 * self.Pi / self.kappa * self._wake(np.maximum(y / self.delta_plus, 1e-12))[0]
+        wake = 2.0 * self.Pi / self.kappa * self._wake(y / self.delta_plus)[0]
         return self.inner._integral(y) + (y * wake - moments(self)(y))
 
 
@@ -319,7 +319,9 @@ class Cess(Bounded):
         return np.asarray(np.sqrt(eddy) * np.sqrt((1.0 + eddy) / np.maximum(stress, 1e-100)))
 
     def _u(self, y: Floats) -> Floats:
-        return _cess(self)(np.minimum(y, self.re_tau))
+        inside = np.minimum(y, self.re_tau)
+        near = inside * (1.0 - 0.5 * np.minimum(inside, 1.0) / self.re_tau)  # no eddies there
+        return np.where(y < 1e-5, near, _cess(self)(inside))
 
     @property
     def stretch(self) -> float:

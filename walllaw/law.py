@@ -45,6 +45,10 @@ class Law(ABC):
     Every law has the methods of this class. y+ and u+ are accepted from 0, which gives 0; negative,
     infinite and NaN values are refused. Where a law's source states a range of y+, values outside
     it give a RangeWarning.
+
+    A law of one's own gives ``kappa`` and ``B`` (of the log layer, for starts), ``ROW``, ``_u`` and
+    ``_slope``, both for flat positive arrays, and ``stretch`` if its slope bends on a scale much
+    below y+ = 15; it must be hashable and never fall.
     """
 
     kappa: float

@@ -238,7 +238,8 @@ class VanDriest(Law):
         far = _FAR * self.A_plus
         if y.min() > far:
             return self._undamped(y) + added
-        near = panels(np.minimum(y, far))
+        # within 1e-5 of the wall u+ = y+ to the last digit, for all constants allowed
+        near = np.where(y < 1e-5, y, panels(np.minimum(y, far)))
         return near if y.max() <= far else np.where(y > far, self._undamped(y) + added, near)
 
 
