@@ -6,6 +6,7 @@ the same bits. Work is done in blocks that fit the processor's cache.
 
 from __future__ import annotations
 
+import math
 import sys
 from collections.abc import Callable
 from dataclasses import dataclass
@@ -127,7 +128,7 @@ class Shape:
     @property
     def size(self) -> int:
         """Number of points."""
-        return int(np.prod(self.dims))
+        return math.prod(self.dims)
 
     def __call__(self, values: Floats) -> Any:
         """Return a float for scalar arguments, else an array of the broadcast shape."""
@@ -183,6 +184,11 @@ def columns(
         for values in checked.values()
     ]
     return Shape(dims), flat
+
+
+def spread(values: Floats, size: int) -> Floats:
+    """Return a flat array of the full length from one that may hold a single number."""
+    return values if values.size == size else np.full(size, values[0])
 
 
 def blocks(kernel: Callable[..., Floats], *arguments: Floats, out: Floats | None = None) -> Floats:

@@ -426,7 +426,8 @@ def developed(
     shape, (first, rough) = arrays.columns(
         **given, relative_roughness=(relative_roughness, Interval(0.0, 0.05))
     )
-    first, rough = (np.ascontiguousarray(np.broadcast_to(v, shape.size)) for v in (first, rough))
+    size = shape.size
+    first, rough = arrays.spread(first, size), arrays.spread(rough, size)
     ks = rough * (2.0 if geometry == "pipe" else 4.0)  # over R or h
     if re_tau is None:
         (first,) = _in_blocks(lambda r, k: (_solve(model, r, k),), first, ks)

