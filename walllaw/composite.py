@@ -27,6 +27,11 @@ _STRENGTH = Interval(0.0, 10.0)
 _SAFE_STEPS = 48  # of the inverse, whose slope falls to nothing at the edge
 
 
+def _without_wake(inner: Law) -> None:
+    if not isinstance(inner, Law) or isinstance(inner, Bounded):
+        raise InputError("inner", type(inner).__name__, "a law of the wall without a wake")
+
+
 class Bounded(Law):
     """A law that ends: constant velocity above its outer edge."""
 
@@ -102,8 +107,7 @@ class WithWake(Bounded):
     ROW: ClassVar[str] = "wake"
 
     def __post_init__(self) -> None:
-        if not isinstance(self.inner, Law) or isinstance(self.inner, Bounded):
-            raise InputError("inner", type(self.inner).__name__, "a law of the wall without a wake")
+        _without_wake(self.inner)
         checked("delta_plus", self.delta_plus, _THICKNESS)
         checked("Pi", self.Pi, _STRENGTH)
 
@@ -199,6 +203,7 @@ class Composite(Bounded):
     ROW: ClassVar[str] = "composite_wake"
 
     def __post_init__(self) -> None:
+        _without_wake(self.inner)
         checked("delta_plus", self.delta_plus, Interval(200.0, _THICKNESS.high))
         checked("Pi", self.Pi, Interval(0.05, _STRENGTH.high))
 

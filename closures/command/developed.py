@@ -35,6 +35,7 @@ _NUMBERS = {
     "A_plus": "damping constant [26]",
     "prandtl": "adds the Nusselt numbers",
     "radius_ratio": "inner over outer radius of the annulus",
+    "stress_ratio": "couette with a pressure gradient: stress at the moving wall over the other's",
 }
 _FLOW = "--reynolds, --re-tau, or a size, a viscosity and --bulk-velocity or the like"
 _FAMILY = (0.0, 1e-5, 1e-4, 1e-3, 1e-2)
@@ -86,8 +87,8 @@ def command(
     closing |= {n: asked.pop(n) for n in ("kappa", "A_plus") if n in asked}
     with warnings.catch_warnings(record=True) as caught:
         warnings.simplefilter("always")
-        if geometry == "annulus" and not moody:
-            content: str | bytes = _annulus(asked, closing, form)
+        if not moody and (geometry == "annulus" or "stress_ratio" in asked):
+            content: str | bytes = _two_walls(geometry, asked, closing, form)
         else:
             closing["roughness_model"] = roughness_model
             make = _moody if moody else _passage
@@ -273,26 +274,41 @@ def _evidence(length: str) -> str:
     return f"{r.title} (source {r.source}, {r.status}); Re {low:g} to {high:g}."
 
 
-def _annulus(asked: dict[str, Any], closing: dict[str, Any], form: str) -> str:
+def _two_walls(
+    geometry: str, asked: dict[str, Any], closing: dict[str, Any], form: str
+) -> str:  # fmt: skip
+    """Solve flow between unlike walls: an annulus, or Couette flow with a pressure gradient."""
     from walllaw.errors import InputError
-    from walllaw.two_wall_flow import annulus_flow
+    from walllaw.two_wall_flow import annulus_flow, couette_poiseuille_flow
 
-    if "radius_ratio" not in asked:
-        raise InputError("--radius-ratio", "nothing", "inner over outer radius")
-    numbers = {n: asked.pop(n) for n in ("radius_ratio", "reynolds", "re_tau") if n in asked}
-    _refuse(asked, "an annulus")
+    if geometry not in ("annulus", "couette"):
+        raise InputError("--stress-ratio", geometry, "couette")
     if form in ("csv", "svg", "png"):
-        raise InputError("--format", form, "text, json or markdown for an annulus")
-    flow = annulus_flow(numbers.pop("radius_ratio"), **numbers, **closing)
-    names = ("radius_ratio", "reynolds", "re_tau", "darcy_friction", "bulk_u_plus",
-             "zero_stress_radius", "stress_ratio", "peak_ratio")  # fmt: skip
+        raise InputError("--format", form, f"text, json or markdown for {geometry} flow")
+    takes: tuple[str, ...] = ("radius_ratio", "reynolds", "re_tau")
+    if geometry == "couette":
+        takes = ("stress_ratio", "re_tau")
+    numbers = {n: asked.pop(n) for n in takes if n in asked}
+    _refuse(asked, f"{geometry} flow between unlike walls")
+    if geometry == "annulus":
+        if "radius_ratio" not in numbers:
+            raise InputError("--radius-ratio", "nothing", "inner over outer radius")
+        flow: Any = annulus_flow(**numbers, **closing)
+        names: tuple[str, ...] = ("radius_ratio", "reynolds", "re_tau", "darcy_friction",
+                 "bulk_u_plus", "zero_stress_radius", "stress_ratio", "peak_ratio")  # fmt: skip
+    else:
+        if "re_tau" not in numbers:
+            raise InputError("--stress-ratio", "no flow", "--re-tau of the wall at rest with it")
+        flow = couette_poiseuille_flow(**numbers, **closing)
+        names = ("stress_ratio", "reynolds", "re_tau", "bulk_u_plus", "wall_u_plus",
+                 "pressure_gradient_plus")  # fmt: skip
     summary = {n: (float(getattr(flow, n)), "1") for n in names}
     if form == "json":
-        data = {"geometry": "annulus", **closing}
+        data = {"geometry": geometry, **closing}
         data["summary"] = {n: {"value": v, "unit": u} for n, (v, u) in summary.items()}
         return json.dumps(data, indent=1, allow_nan=False)
     length = closing["mixing_length"]
-    return _table(f"developed annulus flow, mixing length {length}", summary, form, length)
+    return _table(f"developed {geometry} flow, mixing length {length}", summary, form, length)
 
 
 def _moody(geometry: str, asked: dict[str, Any], closing: dict[str, Any], form: str) -> str | bytes:

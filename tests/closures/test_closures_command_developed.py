@@ -9,7 +9,7 @@ import json
 import pytest
 
 from closures.command import run
-from walllaw import developed
+from walllaw import couette_poiseuille_flow, developed
 
 
 def out(capsys, *arguments: str) -> str:
@@ -42,6 +42,15 @@ def test_every_geometry_and_form(geometry, capsys):
         assert float(rows[-1]["u_plus"]) == pytest.approx(flow.centreline_u_plus, rel=1e-6)
         eta = [float(r["eta"]) for r in rows]
         assert eta == sorted(set(eta))
+
+
+def test_couette_flow_with_a_pressure_gradient(capsys):
+    data = json.loads(
+        out(capsys, "couette", "--stress-ratio", "0.5", "--re-tau", "900", "--format", "json")
+    )
+    flow = couette_poiseuille_flow(900.0, 0.5)
+    assert data["summary"]["wall_u_plus"]["value"] == flow.wall_u_plus
+    assert "wall_u_plus" in out(capsys, "couette", "--stress-ratio", "-0.5", "--re-tau", "900")
 
 
 def test_units_and_every_drive_agree(capsys):
@@ -96,6 +105,9 @@ def test_a_range_left_is_said(capsys):
      (["channel", "--height", "0.1", "--fluid", "air", "--volume-flow", "3"], "--volume-flow"),
      (["pipe", "--reynolds", "1e5", "--roughness", "1 mm"], "--diameter"),
      (["annulus", "--reynolds", "1e5", "--radius-ratio", "0.5", "--format", "svg"], "annulus"),
+     (["couette", "--stress-ratio", "0.5"], "--re-tau"),
+     (["pipe", "--stress-ratio", "0.5", "--re-tau", "900"], "--stress-ratio"),
+     (["couette", "--stress-ratio", "0", "--re-tau", "900"], "stress_ratio"),
      (["couette", "--height", "0.1", "--fluid", "air", "--pressure-gradient", "3"], "bulk_velocity")],
 )  # fmt: skip
 def test_wrong_flags(arguments, words, capsys):

@@ -128,6 +128,7 @@ def test_range_of_the_inner_law():
         (lambda: walllaw.WithWake(walllaw.LogLaw(), 1000.0, -0.5), "Pi"),
         (lambda: walllaw.WithWake(0.41, 1000.0), "inner"),
         (lambda: walllaw.WithWake(walllaw.Composite(1000.0), 1000.0), "inner"),
+        (lambda: walllaw.Composite(1000.0, inner=walllaw.Cess(1000.0)), "inner"),
         (lambda: walllaw.Composite(100.0), "delta_plus"),
         (lambda: walllaw.Composite(1000.0, Pi=0.0), "Pi"),
         (lambda: walllaw.Cess(float("nan")), "re_tau"),
