@@ -12,6 +12,7 @@ from functools import cache
 import numpy as np
 
 from walllaw.arrays import Floats
+from walllaw.panels import gauss
 
 # inner panels: y+ = 15 (exp(s) - 1), short where the van Driest slope has its singularity (0.21 off
 # the real axis near s = 0.26), long further out; they end at the given Re_tau
@@ -25,7 +26,8 @@ NODES = 13  # in each panel
 @cache
 def _gauss(count: int) -> tuple[Floats, Floats, Floats]:
     """Return nodes and weights on 0..1, and the matrix of integrals from 0 to each node."""
-    x, w = np.polynomial.legendre.leggauss(count)
+    share, weights = gauss(count)
+    x = 2.0 * share - 1.0
     vander = np.polynomial.legendre.legvander(x, count - 1)
     antiderivative = np.array([
         [float(np.polynomial.legendre.legval(t, np.polynomial.legendre.legint(row, lbnd=-1)))
@@ -33,7 +35,7 @@ def _gauss(count: int) -> tuple[Floats, Floats, Floats]:
         for t in x
     ])  # fmt: skip
     matrix = antiderivative @ np.linalg.inv(vander)
-    return 0.5 * (x + 1.0), 0.5 * w, 0.5 * matrix
+    return share, weights, 0.5 * matrix
 
 
 @dataclass(frozen=True, slots=True)

@@ -17,7 +17,7 @@ import pytest
 from hypothesis import example, given, settings
 from hypothesis import strategies as st
 
-from closures.units import format_quantity, fraction, quantity
+from closures.units import quantity
 from walllaw import tables
 from walllaw.errors import InputError
 
@@ -236,37 +236,3 @@ def test_a_home_that_cannot_be_written_is_no_fault(tmp_path):
     subprocess.run(
         [sys.executable, "-c", code], check=True, env={"HOME": str(tmp_path / "none")}, cwd="."
     )
-
-
-@pytest.mark.parametrize(
-    ("value", "expected"),
-    [("5 %", 0.05), (0.05, 0.05), ("0.05", 0.05), (0, 0.0), (1, 1.0), ("100 %", 1.0)],
-)
-def test_fraction(value, expected):
-    assert fraction(value, "x") == expected
-
-
-@pytest.mark.parametrize(
-    ("value", "hint"),
-    [(5, 'did you mean "5 %"?'), ("5", 'did you mean "5 %"?'), (1.5, 'did you mean "1.5 %"?'), ("150 %", ""),
-     (-0.1, ""), (1e6, "")],
-)  # fmt: skip
-def test_fraction_asks_back(value, hint):
-    with pytest.raises(InputError, match="x: got") as caught:
-        fraction(value, "x")
-    assert caught.value.hint == hint
-
-
-@pytest.mark.parametrize(
-    ("value", "unit", "text"),
-    [(1.5e-05, "m2/s", "1.5e-05 m2/s"), (0.021, "m", "0.021 m"), (0.05, "1", "0.05"), (-0.0, "Pa", "0 Pa"),
-     (1878.2971, "1/s", "1878.3 1/s"), (40.0, "m/s", "40 m/s")],
-)  # fmt: skip
-def test_format_quantity(value, unit, text):
-    assert format_quantity(value, unit) == text
-
-
-@given(st.floats(1e-30, 1e30), st.sampled_from(["m", "m/s", "Pa*s", "W/(m*K)", "1"]))
-@settings(derandomize=True, deadline=None)
-def test_a_formatted_quantity_reads_back(value, unit):
-    assert quantity(format_quantity(value, unit, digits=17), unit, "x") == value
