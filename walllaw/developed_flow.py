@@ -6,7 +6,6 @@ The momentum balance gives the velocity gradient in closed form, so that the flo
 
 from __future__ import annotations
 
-from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Any
 
@@ -16,13 +15,12 @@ from numpy.typing import NDArray
 from walllaw import arrays
 from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval, Shape
 from walllaw.errors import InputError, unknown_name
-from walllaw.flow_quadrature import Grid, running, total
+from walllaw.flow_quadrature import Grid, in_blocks, running, total
 from walllaw.flow_quadrature import grid as make_grid
 from walllaw.mixing_lengths import MixingLength, MixingModel, constants
 from walllaw.roots import secant
 
 GEOMETRIES = ("pipe", "channel", "open-channel", "couette")
-_CASES = 16  # cases in one block: their nodes stay in the first two caches
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -63,12 +61,6 @@ def _reynolds(model: _Model, re_tau: Floats, bulk: Floats) -> Floats:
     """Return the Reynolds number on the hydraulic diameter (4 h for channels, 2 R for a pipe)."""
     factor = 2.0 if model.geometry == "pipe" else 4.0
     return factor * re_tau * bulk
-
-
-def _in_blocks(kernel: Callable[..., tuple[Floats, ...]], *columns: Floats) -> list[Floats]:
-    size = columns[0].size
-    parts = [kernel(*(c[i : i + _CASES] for c in columns)) for i in range(0, max(size, 1), _CASES)]
-    return [np.concatenate(column) for column in zip(*parts, strict=True)]
 
 
 def _solve(model: _Model, reynolds: Floats, ks: Floats) -> Floats:
@@ -133,13 +125,13 @@ class DevelopedFlow:
         Arrays of the case's shape with one more dimension, from the wall to the axis.
         """
         names = ("eta", "y_plus", "u_plus", "slope", "nu_t", "mixing_length", "stress")
-        found = _in_blocks(lambda *c: _profiles(self._model, *c), *self._flat)
+        found = in_blocks(lambda *c: _profiles(self._model, *c), *self._flat)
         dims = self._shape.dims
         return {n: v.reshape(*dims, v.shape[-1]) for n, v in zip(names, found, strict=True)}
 
     def flux_coefficients(self) -> tuple[Any, Any]:
         """Return the momentum-flux and the kinetic-energy-flux coefficient, beta and alpha [1]."""
-        beta, alpha = _in_blocks(lambda *c: _fluxes(self._model, *c), *self._flat)
+        beta, alpha = in_blocks(lambda *c: _fluxes(self._model, *c), *self._flat)
         return self._shape(beta), self._shape(alpha)
 
     def nusselt(self, prandtl: FloatLike, turbulent_prandtl: float = 0.85) -> tuple[Any, Any]:
@@ -167,7 +159,7 @@ class DevelopedFlow:
         pr = np.broadcast_to(arrays.check("prandtl", prandtl, POSITIVE), self._shape.dims)
         flat = np.ascontiguousarray(pr).reshape(-1)
         turbulent = float(arrays.check("turbulent_prandtl", turbulent_prandtl, POSITIVE))
-        return _in_blocks(
+        return in_blocks(
             lambda r, k, p: _nusselt(self._model, r, k, p, turbulent), *self._flat, flat
         )
 
@@ -194,7 +186,7 @@ class DevelopedFlow:
 
     def log_law(self, low: float = 100.0, share: float = 0.15) -> tuple[Any, Any]:
         """Return kappa and B fitted to low < y+ < share Re_tau (least squares in ln y+)."""
-        p = _in_blocks(lambda *c: _profiles(self._model, *c)[1:3], *self._flat)
+        p = in_blocks(lambda *c: _profiles(self._model, *c)[1:3], *self._flat)
         y, u = p
         use = (y > low) & (y < share * self._flat[0][:, np.newaxis])
         if (use.sum(axis=1) < 3).any():
@@ -430,8 +422,8 @@ def developed(
     first, rough = arrays.spread(first, size), arrays.spread(rough, size)
     ks = rough * (2.0 if geometry == "pipe" else 4.0)  # over R or h
     if re_tau is None:
-        (first,) = _in_blocks(lambda r, k: (_solve(model, r, k),), first, ks)
-    bulk, centre = _in_blocks(lambda r, k: _bulk(model, r, k), first, ks)
+        (first,) = in_blocks(lambda r, k: (_solve(model, r, k),), first, ks)
+    bulk, centre = in_blocks(lambda r, k: _bulk(model, r, k), first, ks)
     re = _reynolds(model, first, bulk)
     model.use(re)
     return DevelopedFlow(

@@ -6,6 +6,7 @@ in the outer part in the root of the distance from the axis, where the gradient 
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass
 from functools import cache
 
@@ -21,6 +22,7 @@ _EDGES = np.array([0.0, 0.2, 0.4, 0.6, 0.9, 1.3, 1.9, 2.7, 3.9, 5.4, 7.4, 9.9, 1
 # outer panels: y = R (1 - z^2), shorter towards the axis
 _OUTER = np.array([1.0, 0.7, 0.4, 0.15, 0.04, 0.008, 0.0])
 NODES = 13  # in each panel
+_CASES = 16  # cases in one block: their nodes stay in the first two caches
 
 
 @cache
@@ -77,6 +79,13 @@ def grid(re_tau: Floats, split: float) -> Grid:
     step[:, :inner] = width * ((y + _STRETCH) / scale)  # dy = 15 exp(s) ds
     step[:, inner:] = step_out
     return Grid(eta, rest, eta * scale, step * w, step)
+
+
+def in_blocks(kernel: Callable[..., tuple[Floats, ...]], *columns: Floats) -> list[Floats]:
+    """Evaluate a kernel of several cases block by block; its results, each over all cases."""
+    size = columns[0].size
+    parts = [kernel(*(c[i : i + _CASES] for c in columns)) for i in range(0, max(size, 1), _CASES)]
+    return [np.concatenate(column) for column in zip(*parts, strict=True)]
 
 
 def total(values: Floats) -> Floats:

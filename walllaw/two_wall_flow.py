@@ -14,11 +14,9 @@ import numpy as np
 from walllaw import arrays
 from walllaw.arrays import FloatLike, Floats, Interval
 from walllaw.errors import InputError
-from walllaw.flow_quadrature import Grid, grid, running, total
+from walllaw.flow_quadrature import Grid, grid, in_blocks, running, total
 from walllaw.mixing_lengths import MixingLength, MixingModel, constants
 from walllaw.roots import secant
-
-_CASES = 16  # cases in one block: their nodes stay in the first two caches
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -206,12 +204,12 @@ def annulus_flow(
     shape, (ratio, first) = arrays.columns(**given)  # type: ignore[arg-type]
     size = shape.size
     ratio, first = arrays.spread(ratio, size), arrays.spread(first, size)
-    parts = []
-    for i in range(0, max(size, 1), _CASES):
-        r, x = ratio[i : i + _CASES], first[i : i + _CASES]
+
+    def kernel(r: Floats, x: Floats) -> tuple[Floats, ...]:
         friction = _reynolds_solve(model, r, x) if re_tau is None else x
-        parts.append((friction, *_annulus(model, r, friction)))
-    friction, bulk, end, stress, peak = (np.concatenate(c) for c in zip(*parts, strict=True))
+        return friction, *_annulus(model, r, friction)
+
+    friction, bulk, end, stress, peak = in_blocks(kernel, ratio, first)
     re = 4.0 * friction * bulk
     model.use(re)
     return AnnulusFlow(*(shape(v) for v in (ratio, re, friction, bulk, end, stress, peak)))
@@ -307,11 +305,7 @@ def couette_poiseuille_flow(
         raise InputError("stress_ratio", f"{ratio[near][0]:g}", "-1 to -0.001 or 0.05 to 1")
     size = shape.size
     re, ratio = arrays.spread(re, size), arrays.spread(ratio, size)
-    parts = [
-        _plane(model, re[i : i + _CASES], ratio[i : i + _CASES])
-        for i in range(0, max(size, 1), _CASES)
-    ]
-    bulk, wall = (np.concatenate(c) for c in zip(*parts, strict=True))
+    bulk, wall = in_blocks(lambda r, s: _plane(model, r, s), re, ratio)
     reynolds = 4.0 * re * bulk
     model.use(reynolds)
     gradient = 0.5 * (1.0 - ratio)

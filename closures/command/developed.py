@@ -4,12 +4,11 @@ from __future__ import annotations
 
 import json
 import textwrap
-import warnings
 from typing import TYPE_CHECKING, Any
 
 import click
 
-from closures.command.options import output_options
+from closures.command.options import flag, named_fluid, output_options, range_warnings
 
 if TYPE_CHECKING:
     from walllaw.developed_flow import DevelopedFlow
@@ -43,11 +42,9 @@ _FAMILY = (0.0, 1e-5, 1e-4, 1e-3, 1e-2)
 
 def _options(function: Any) -> Any:
     for name, help_text in reversed(_NUMBERS.items()):
-        flag = f"--{name.replace('_', '-')}"
-        function = click.option(flag, name, type=float, help=help_text)(function)
+        function = click.option(flag(name), name, type=float, help=help_text)(function)
     for name, (_, help_text) in reversed(_QUANTITIES.items()):
-        flag = f"--{name.replace('_', '-')}"
-        function = click.option(flag, name, metavar="QUANTITY", help=help_text)(function)
+        function = click.option(flag(name), name, metavar="QUANTITY", help=help_text)(function)
     return function
 
 
@@ -85,16 +82,13 @@ def command(
     length = mixing_length or ("linear" if geometry == "couette" else "nikuradse")
     closing = {"mixing_length": length, "damping": damping}
     closing |= {n: asked.pop(n) for n in ("kappa", "A_plus") if n in asked}
-    with warnings.catch_warnings(record=True) as caught:
-        warnings.simplefilter("always")
+    with range_warnings():
         if not moody and (geometry == "annulus" or "stress_ratio" in asked):
             content: str | bytes = _two_walls(geometry, asked, closing, form)
         else:
             closing["roughness_model"] = roughness_model
             make = _moody if moody else _passage
             content = make(geometry, _si(asked, fluid), closing, form)
-    for note in {str(w.message) for w in caught}:
-        click.echo(f"closures: warning: {note}", err=True)
     if isinstance(content, bytes):
         emit_bytes(content, output)
     else:
@@ -104,35 +98,22 @@ def command(
 
 def _si(asked: dict[str, Any], name: str | None) -> dict[str, float]:
     from closures.units import quantity
-    from walllaw.errors import InputError
 
     amounts = {
         n: quantity(v, _QUANTITIES[n][0], n) if n in _QUANTITIES else v for n, v in asked.items()
     }
-    conditions = {n: amounts.pop(n) for n in ("temperature", "pressure") if n in amounts}
-    if name is not None:
-        from closures.fluids import fluid
-
-        for n in ("kinematic_viscosity", "density"):
-            if n in amounts:
-                raise InputError("--fluid", f"a {n.replace('_', ' ')} as well", "one of the two")
-        found = fluid(name, **conditions)
+    found = named_fluid(name, amounts, ("kinematic_viscosity", "density"))
+    if found is not None:
         amounts["kinematic_viscosity"] = float(found.kinematic_viscosity)
         amounts["density"] = float(found.density)
-    elif conditions:
-        raise InputError(f"--{next(iter(conditions))}", "no fluid", "a fluid by --fluid")
     return amounts
-
-
-def _flag(name: str) -> str:
-    return f"--{name.replace('_', '-')}"
 
 
 def _refuse(amounts: dict[str, Any], subject: str) -> None:
     from walllaw.errors import InputError
 
     if amounts:
-        raise InputError(_flag(next(iter(amounts))), f"a flag that {subject} does not take", "none")
+        raise InputError(flag(next(iter(amounts))), f"a flag that {subject} does not take", "none")
 
 
 def _passage(
@@ -158,10 +139,10 @@ def _passage(
         raise InputError("--volume-flow", f"a {geometry}, whose width is not known", "pipe")
     if drives:
         if numbers:
-            raise InputError(_flag(next(iter(numbers))), f"{_flag(next(iter(drives)))} too", "one")
+            raise InputError(flag(next(iter(numbers))), f"{flag(next(iter(drives)))} too", "one")
         if size is None or nu is None:
             missing = "--diameter or --height" if size is None else "--fluid or a viscosity"
-            raise InputError(_flag(next(iter(drives))), "no more", f"{missing} with it")
+            raise InputError(flag(next(iter(drives))), "no more", f"{missing} with it")
         if "pressure_gradient" in drives:
             if density is None:
                 raise InputError("--pressure-gradient", "no density", "--density or --fluid")

@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING, Any
 
 import click
 
-from closures.command.options import output_options
+from closures.command.options import flag, named_fluid, output_options
 
 if TYPE_CHECKING:
     from closures.inlets import Inlet
@@ -29,7 +29,6 @@ _NUMBERS = {
     "dissipation_length": "k^(3/2)/epsilon",
     "integral_length": "longitudinal integral length",
 }
-_FLUID = ("temperature", "pressure")
 _ALWAYS = ("k", "epsilon", "omega", "nu_t", "viscosity_ratio", "mixing_length",
            "eddy_viscosity_length",
            "dissipation_length", "integral_length")  # fmt: skip
@@ -37,9 +36,7 @@ _ALWAYS = ("k", "epsilon", "omega", "nu_t", "viscosity_ratio", "mixing_length",
 
 def _options(function: Any) -> Any:
     for name, words in reversed(_NUMBERS.items()):
-        function = click.option(
-            f"--{name.replace('_', '-')}", name, metavar="QUANTITY", help=words
-        )(function)
+        function = click.option(flag(name), name, metavar="QUANTITY", help=words)(function)
     return function
 
 
@@ -59,18 +56,11 @@ def command(name: str, fluid: str | None, form: str, output: str, **given: str |
     """What to set at the inlet: two independent turbulence quantities give all the others."""
     from closures.files import emit
     from closures.inlets import inlet
-    from walllaw.errors import InputError
 
     numbers = {n: _si(n, v) for n, v in given.items() if v is not None}
-    conditions = {n: numbers.pop(n) for n in _FLUID if n in numbers}
-    if fluid is not None:
-        if "kinematic_viscosity" in numbers:
-            raise InputError("--fluid", "a kinematic viscosity as well", "one of the two")
-        from closures.fluids import fluid as properties
-
-        numbers["kinematic_viscosity"] = properties(fluid, **conditions).kinematic_viscosity
-    elif conditions:
-        raise InputError(f"--{next(iter(conditions))}", "no fluid", "a fluid by --fluid")
+    found_fluid = named_fluid(fluid, numbers, ("kinematic_viscosity",))
+    if found_fluid is not None:
+        numbers["kinematic_viscosity"] = found_fluid.kinematic_viscosity
     if name != "all":
         found = [inlet(name, **numbers)]
     else:
@@ -84,7 +74,7 @@ def _si(name: str, value: str) -> float:
     from closures.units import quantity
     from walllaw.errors import InputError
 
-    number = quantity(value, known(name).unit, f"--{name.replace('_', '-')}")
+    number = quantity(value, known(name).unit, flag(name))
     if name == "intensity" and number > 1:
         raise InputError("--intensity", value, "a fraction up to 1", f'did you mean "{value} %"?')
     return number

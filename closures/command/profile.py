@@ -3,12 +3,11 @@
 from __future__ import annotations
 
 import json
-import warnings
 from typing import TYPE_CHECKING, Any
 
 import click
 
-from closures.command.options import output_options
+from closures.command.options import flag, output_options, range_warnings
 
 if TYPE_CHECKING:
     from walllaw.law import Law
@@ -49,9 +48,7 @@ def _law(name: str, given: dict[str, float | int | None], pair: str | None) -> t
         source = found.source
     for k in constants:
         if k not in takes:
-            raise InputError(
-                f"--{k.replace('_', '-')}", f"a {name} law", ", ".join(takes) or "no constant"
-            )
+            raise InputError(flag(k), f"a {name} law", ", ".join(takes) or "no constant")
     return getattr(walllaw, class_name)(**constants), source
 
 
@@ -94,16 +91,13 @@ def command(
     if not 2 <= points <= 100_000:
         raise InputError("--points", str(points), "2 to 100000")
     marks = _marks(y_plus, growth, layers) if form in ("svg", "png") else []
-    with warnings.catch_warnings(record=True) as caught:
-        warnings.simplefilter("always")
+    with range_warnings():
         if form in ("svg", "png"):
             from closures import pictures
 
             picture = pictures.wall_law(made, law, low, high, marks, form)
         else:
             table = _table(made, low, high, points)
-    for note in dict.fromkeys(str(w.message) for w in caught):
-        click.echo(f"closures: warning: {note}", err=True)
     if form in ("svg", "png"):
         emit_bytes(picture, output)
         return 0
