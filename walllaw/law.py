@@ -4,7 +4,9 @@ A law gives kernels on flat arrays: u+(y+) and du+/dy+ (Spalding's gives y+(u+) 
 inverse, the friction velocity, the eddy viscosity and mixing length that it implies and its
 integral follow from them here. All equations are y+^a u+^b = x with a and b 0 or 1, and one scheme
 solves them: a start from a table made once for the law, then a fixed number of Newton steps,
-taken relative to the value so that nothing overflows.
+taken relative to the value so that nothing overflows. For the friction velocity the
+scheme itself is tabulated to the last digits, and all points but those at kinks of the law take
+their values from there.
 """
 
 from __future__ import annotations
@@ -19,6 +21,7 @@ import numpy as np
 from walllaw import arrays
 from walllaw.arrays import AMOUNT, AMOUNT_OR_ZERO, FloatLike, Floats, Interval
 from walllaw.errors import InputError
+from walllaw.octave_table import OctaveTable
 from walllaw.panels import STRETCH, Panels
 from walllaw.relation import relation
 from walllaw.start_table import StartTable, nodes, safe_root
@@ -30,6 +33,8 @@ _TABLE_STEPS = 40  # when a table is made, once for each law: bisection alone re
 _ROUGH_STEPS = 48
 # natural logarithms of Re_y and of y+ or u+ that tables cover; straight beyond
 _RE_SPAN, _SPAN = (-80.0, 70.0), (-40.0, 70.0)
+_OCTAVES = (-64, 100)  # of Re_y, tabulated to the last digits: 5e-20 to 1e30
+_LOW, _HIGH = 2.0 ** _OCTAVES[0], 2.0 ** _OCTAVES[1] * (1.0 - 2.0**-53)
 
 
 def blend(viscous: Floats, log: Floats) -> Floats:
@@ -120,6 +125,25 @@ class Law(ABC):
     def _u_of_re(self, re: Floats) -> Floats:
         """Return u+ where u+ y+ = Re_y, for flat positive Re_y."""
         return re / self._solve(re, 1, 1)
+
+    def _rate_of_re(self, re: Floats) -> Floats:
+        """Return the derivative of the same."""
+        u = self._u_of_re(re)
+        y = re / u
+        rise = y * self._slope(y)
+        return rise / (y * (u + rise))
+
+    def _u_of_any_re(self, re: Floats) -> Floats:
+        """Return u+ of Re_y from the table of the scheme; near its kinks, from the scheme."""
+        table = _octaves(self)
+        inside = np.minimum(np.maximum(re, _LOW), _HIGH)
+        found = table(inside)
+        kinked = table.kinked(inside)
+        if kinked is not None or re.min() < _LOW:
+            left = re < _LOW if kinked is None else kinked | (re < _LOW)
+            if left.any():
+                found[left] = self._u_of_re(re[left])
+        return found
 
     def _moment(self, y: Floats) -> Floats:
         return y * self._slope(np.maximum(y, self.FLOOR))
@@ -243,7 +267,7 @@ class Law(ABC):
     def u_plus_of_re_y(self, re_y: FloatLike) -> Any:
         """Return u+ [1] where u+ y+ = U y/nu = Re_y; Re_y from 0 to 1e30."""
         shape, (re,) = arrays.columns(re_y=(re_y, Y_PLUS))
-        u = arrays.blocks(self._guarded("re_y", self._u_of_re), re)
+        u = arrays.blocks(self._guarded("re_y", self._u_of_any_re), re)
         self._note_solved(lambda: re / np.maximum(u, 1e-150), re_y=re)
         return shape(u)
 
@@ -308,9 +332,9 @@ class Law(ABC):
             if not arrays.within(re, Y_PLUS):
                 arrays.check(RE_Y, flat[0] * (flat[1] / flat[2]), Y_PLUS)
             if roughness_function is None and re.min() >= self.FLOOR:  # the same bits, sooner
-                return u / self._u_of_re(re)
+                return u / self._u_of_any_re(re)
             if roughness_function is None:
-                found = self._guarded("re_y", self._u_of_re)(re)
+                found = self._guarded("re_y", self._u_of_any_re)(re)
             else:
                 found = self._rough(re, rough[0] / y, roughness_function)
             return np.where(re > 0.0, u / np.maximum(found, 1e-300), 0.0)
@@ -333,7 +357,7 @@ class Law(ABC):
             rate = (np.asarray(shift(k * (y * (1.0 + h)))) - taken) / h
             return self._u(y) - taken - x / y, y * self._slope(y) - rate + x / y
 
-        smooth = self._guarded("re_y", self._u_of_re)(x)
+        smooth = self._guarded("re_y", self._u_of_any_re)(x)
         low = np.log(x / smooth) - 1e-3
         # as far as u+ = 0.001; a law with a greater shift than velocity has no flow
         t = safe_root(residual, low, np.maximum(np.log(x) + 7.0, low + 1.0), low, _ROUGH_STEPS)
@@ -364,6 +388,16 @@ def _table(law: Law, a: int, b: int) -> StartTable:
 
     t = safe_root(residual, *law._guess(x, a, b), _TABLE_STEPS)
     return StartTable.of(low, t, 1.0 / np.maximum(residual(t)[1], 1e-30))
+
+
+@lru_cache(maxsize=64)
+def _octaves(law: Law) -> OctaveTable:
+    """Return u+ against Re_y to the last digits."""
+    return OctaveTable.of(
+        lambda re: arrays.blocks(law._u_of_re, re),
+        lambda re: arrays.blocks(law._rate_of_re, re),
+        *_OCTAVES,
+    )
 
 
 @lru_cache(maxsize=64)

@@ -121,6 +121,10 @@ class Spalding(LogLayer):
     def _u_of_re(self, re: Floats) -> Floats:
         return self._solve(re, 1, 1)
 
+    def _rate_of_re(self, re: Floats) -> Floats:
+        y, _, rise, _ = self._pair(self._u_of_re(re))
+        return 1.0 / (y + rise)
+
     def _slope(self, y: Floats) -> Floats:
         u = self._u(y)
         return 1.0 / (1.0 + self._terms(u)[1] / u)
