@@ -268,13 +268,15 @@ class Law(ABC):
         """Return u+ [1] where u+ y+ = U y/nu = Re_y; Re_y from 0 to 1e30."""
         shape, (re,) = arrays.columns(re_y=(re_y, Y_PLUS))
         u = arrays.blocks(self._guarded("re_y", self._u_of_any_re), re)
-        self._note_solved(lambda: re / np.maximum(u, 1e-150), re_y=re)
+        self._note_solved(lambda r, v: r / np.maximum(v, 1e-150), (re, u), re_y=re)
         return shape(u)
 
-    def _note_solved(self, y_plus: Callable[[], Floats], **inputs: Floats) -> None:
+    def _note_solved(
+        self, y_plus: Callable[..., Floats], solved: tuple[Floats, ...], **inputs: Floats
+    ) -> None:
         """Note the use after a solution; y+ is worked out only where the source limits it."""
         if relation("laws", self.ROW).valid:
-            self._note(y_plus())
+            self._note(arrays.blocks(y_plus, *solved))
         else:
             relation("laws", self.ROW).use(**inputs)
 
@@ -320,14 +322,21 @@ class Law(ABC):
         """
         if (roughness is None) != (roughness_function is None):
             raise InputError("roughness", "one of the two", "roughness with a roughness_function")
-        shape, flat = arrays.columns(
-            velocity=(velocity, AMOUNT_OR_ZERO),
-            distance=(distance, AMOUNT),
-            kinematic_viscosity=(kinematic_viscosity, AMOUNT),
-            **({} if roughness is None else {"roughness": (roughness, AMOUNT_OR_ZERO)}),
-        )
+        given: dict[str, tuple[FloatLike, Interval]] = {
+            "velocity": (velocity, AMOUNT_OR_ZERO),
+            "distance": (distance, AMOUNT),
+            "kinematic_viscosity": (kinematic_viscosity, AMOUNT),
+        }
+        if roughness is not None:
+            given["roughness"] = (roughness, AMOUNT_OR_ZERO)
+        shape, flat = arrays.columns(True, **given)
 
         def kernel(u: Floats, y: Floats, nu: Floats, *rough: Floats) -> Floats:
+            for part, (name, (value, interval)) in zip(
+                (u, y, nu, *rough), given.items(), strict=True
+            ):
+                if not arrays.within(part, interval):
+                    arrays.check(name, value, interval)
             re = u * (y / nu)
             if not arrays.within(re, Y_PLUS):
                 arrays.check(RE_Y, flat[0] * (flat[1] / flat[2]), Y_PLUS)
@@ -340,9 +349,8 @@ class Law(ABC):
             return np.where(re > 0.0, u / np.maximum(found, 1e-300), 0.0)
 
         u_tau = arrays.blocks(kernel, *flat)
-        names = ("velocity", "distance", "kinematic_viscosity", "roughness")
-        inputs = dict(zip(names, flat, strict=False))
-        self._note_solved(lambda: u_tau * (flat[1] / flat[2]), **inputs)
+        inputs = dict(zip(given, flat, strict=True))
+        self._note_solved(lambda u, y, nu: u * (y / nu), (u_tau, *flat[1:3]), **inputs)
         return shape(u_tau)
 
     def _rough(self, re: Floats, ratio: Floats, shift: Callable[[Floats], Any]) -> Floats:

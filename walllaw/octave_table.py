@@ -42,6 +42,7 @@ class OctaveTable:
     high: int
     columns: tuple[Floats, ...]
     kinks: NDArray[np.bool_]
+    clear: float = 0.0  # from here on there are none
 
     @classmethod
     def of(cls, value: Kernel, slope: Kernel, low: int, high: int) -> OctaveTable:
@@ -49,8 +50,9 @@ class OctaveTable:
 
         Parts that miss the function at a few places between, since it has a kink there, are marked.
         """
-        size = np.ldexp(1.0, np.arange(low, high) - _BITS)[:, np.newaxis]
-        left = (size * np.arange(1 << _BITS, 2 << _BITS)).reshape(-1, 1)
+        size = np.exp2(np.arange(low, high, dtype=np.float64) - _BITS)[:, np.newaxis]
+        parts = np.arange(1 << _BITS, 2 << _BITS, dtype=np.float64)
+        left = (size * parts).reshape(-1, 1)
         width = np.repeat(size, 1 << _BITS, axis=0)
         x, _ = gauss(_NODES)
         rates = width * slope((left + width * x).reshape(-1)).reshape(left.size, _NODES)
@@ -61,7 +63,9 @@ class OctaveTable:
         table = cls(low, high, polynomials, np.zeros(left.size, dtype=np.bool_))
         places = (left + width * _CHECKS).reshape(-1)
         miss = np.abs(table(places) / value(places) - 1.0).reshape(left.size, _CHECKS.size)
-        return cls(low, high, polynomials, ~(miss.max(axis=1) <= _SMOOTH))
+        kinks = ~(miss.max(axis=1) <= _SMOOTH)
+        clear = float((left + width)[kinks].max(initial=0.0))
+        return cls(low, high, polynomials, kinks, clear)
 
     def _place(self, bits: NDArray[np.int64]) -> NDArray[np.int64]:
         place = bits >> _SHIFT
@@ -69,8 +73,10 @@ class OctaveTable:
         return place
 
     def kinked(self, x: Floats) -> NDArray[np.bool_] | None:
-        """Return where x lies in a part with a kink; nothing if the function has none."""
-        return np.take(self.kinks, self._place(x.view(np.int64))) if self.kinks.any() else None
+        """Return where x lies in a part with a kink; nothing if all of x lies beyond the last."""
+        if x.size == 0 or x.min() >= self.clear:
+            return None
+        return np.take(self.kinks, self._place(x.view(np.int64)))
 
     def __call__(self, x: Floats) -> Floats:
         """Return the function at x, from 2^low to below 2^high."""
