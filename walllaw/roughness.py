@@ -25,6 +25,7 @@ from walllaw.arrays import (
     Floats,
     Interval,
 )
+from walllaw.errors import unknown_name
 from walllaw.relation import Relation, relation
 from walllaw.rough_wall_values import (
     knopp_displacement,
@@ -72,38 +73,45 @@ __all__ = [
 _REGIMES = np.array(["smooth", "transitional", "fully rough"])
 
 
-def regime(roughness_plus: FloatLike) -> Any:
-    """Return the regime of a sand-rough wall.
+def regime(roughness_plus: FloatLike, criterion: str = "sand") -> Any:
+    """Return the regime of a rough wall.
 
     Parameters
     ----------
     roughness_plus : float or array
         k_s+ [1].
+    criterion : str, optional
+        ``sand``: limits of the fit to Nikuradse's sand; ``any-surface``: those of a review of many
+        surfaces.
 
     Returns
     -------
     str or ndarray of str
-        ``smooth`` (to 2.25), ``transitional`` or ``fully rough`` (from 90).
+        ``smooth`` (to 2.25; any surface: to 4), ``transitional`` or ``fully rough`` (from 90; 80).
 
     Raises
     ------
     InputError
-        If k_s+ is negative.
+        If k_s+ is negative, or the criterion is not known.
 
     Notes
     -----
-    The limits are those of the fit to Nikuradse's sand; commercial surfaces have no smooth regime.
+    Commercial surfaces of Colebrook's type have no smooth regime. A log layer is left above the
+    roughness only where the layer is some 40 times as thick as the elements are high.
 
     References
     ----------
-    ligrani-moffat-1986
+    ligrani-moffat-1986, jimenez-2004
 
     Examples
     --------
-    >>> regime(40.0)
-    'transitional'
+    >>> regime(40.0), regime(3.0), regime(3.0, "any-surface")
+    ('transitional', 'transitional', 'smooth')
     """
-    c = relation("roughness", "regimes")
+    rows = {"sand": "regimes", "any-surface": "regimes_any_surface"}
+    if criterion not in rows:
+        raise unknown_name("criterion", criterion, rows)
+    c = relation("roughness", rows[criterion])
     shape, (ks,) = arrays.columns(roughness_plus=(roughness_plus, AMOUNT_OR_ZERO))
     c.use(roughness_plus=ks)
     index = (ks > c["smooth"]).astype(np.intp) + (ks >= c["rough"])
