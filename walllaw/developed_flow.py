@@ -6,7 +6,9 @@ The momentum balance gives the velocity gradient in closed form, so that the flo
 
 from __future__ import annotations
 
+from collections.abc import Callable
 from dataclasses import dataclass
+from functools import partial
 from typing import Any
 
 import numpy as np
@@ -15,7 +17,7 @@ from numpy.typing import NDArray
 from walllaw import arrays
 from walllaw.arrays import POSITIVE, FloatLike, Floats, Interval, Shape
 from walllaw.errors import InputError, unknown_name
-from walllaw.flow_quadrature import Grid, in_blocks, running, total
+from walllaw.flow_quadrature import PANELS, SINGLE, Grid, in_blocks, running, single, total
 from walllaw.flow_quadrature import grid as make_grid
 from walllaw.mixing_lengths import MixingLength, MixingModel, constants
 from walllaw.roots import secant
@@ -33,10 +35,10 @@ class _Model(MixingModel):
         """Return tau/tau_w."""
         return np.ones_like(grid.rest) if self.geometry == "couette" else grid.rest
 
-    def slope(self, grid: Grid, re_tau: Floats, shift: Floats) -> tuple[Floats, Floats]:
-        """Return dU+/dy+ and nu_t/nu at the nodes."""
+    def closing(self, grid: Grid, re_tau: Floats) -> tuple[Floats, Floats]:
+        """Return the stress at the nodes and the fall of pressure in wall units."""
         share = {"pipe": 2.0, "couette": 0.0}.get(self.geometry, 1.0)
-        return self.gradient(grid, re_tau, shift, self.stress(grid), share / re_tau)
+        return self.stress(grid), share / re_tau
 
 
 def _weight(model: _Model, grid: Grid) -> Floats:
@@ -44,17 +46,37 @@ def _weight(model: _Model, grid: Grid) -> Floats:
     return 2.0 * grid.rest if model.geometry == "pipe" else np.ones_like(grid.rest)
 
 
-def _bulk(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
+def _bulk(model: _Model, re_tau: Floats, ks: Floats, even: bool) -> tuple[Floats, Floats]:
     """Return U_b+ and U_c+ by parts: one integral each, no profile needed."""
     shift = model.shift(ks * re_tau) if np.any(ks > 0) else np.zeros_like(re_tau)
-    grid = make_grid(re_tau, model.split)
-    slope, _ = model.slope(grid, re_tau, shift)
-    part = grid.width * slope
+    grid = single(re_tau) if even else make_grid(re_tau, model.split)
+    part = model.slope(grid, re_tau, shift, *model.closing(grid, re_tau)) * grid.width
     centre = re_tau * total(part)
     if model.geometry == "couette":  # the mean over the whole gap is the speed halfway
         return centre, centre
-    over = grid.rest * grid.rest if model.geometry == "pipe" else grid.rest
-    return re_tau * total(part * over), centre
+    part *= grid.rest
+    if model.geometry == "pipe":
+        part *= grid.rest
+    return re_tau * total(part), centre
+
+
+def _by_wall(
+    model: _Model, kernel: Callable[..., tuple[Floats, ...]], first: Floats, ks: Floats
+) -> list[Floats]:
+    """Evaluate a kernel for smooth walls, where one panel may do, and for the others."""
+    even = (ks == 0.0) & model.even
+    found: list[Floats] = []
+    for which, nodes in ((even, SINGLE), (~even, PANELS)):
+        if which.any():
+            alike = bool(which.all())
+            some = (first, ks) if alike else (first[which], ks[which])
+            results = in_blocks(partial(kernel, even=nodes == SINGLE), *some, nodes=nodes)
+            if alike:
+                return results
+            found = found or [np.empty_like(first) for _ in results]
+            for column, values in zip(found, results, strict=True):
+                column[which] = values
+    return found
 
 
 def _reynolds(model: _Model, re_tau: Floats, bulk: Floats) -> Floats:
@@ -63,18 +85,21 @@ def _reynolds(model: _Model, re_tau: Floats, bulk: Floats) -> Floats:
     return factor * re_tau * bulk
 
 
-def _solve(model: _Model, reynolds: Floats, ks: Floats) -> Floats:
+def _solve(model: _Model, reynolds: Floats, ks: Floats, even: bool) -> tuple[Floats]:
     """Return Re_tau for a Reynolds number: secant in logarithms, where they are near linear."""
 
     def miss(x: Floats) -> Floats:
         re_tau = np.exp(x)
-        return np.log(_reynolds(model, re_tau, _bulk(model, re_tau, ks)[0]) / reynolds)
+        return np.log(_reynolds(model, re_tau, _bulk(model, re_tau, ks, even)[0]) / reynolds)
 
-    # start: the larger of the laminar and the Blasius wall stress
+    # start: the larger of the laminar wall stress and that of Haaland's explicit friction factor
     factor = 2.0 if model.geometry == "pipe" else 4.0
     laminar = np.sqrt(8.0 / factor * reynolds) if factor == 2.0 else np.sqrt(0.75 * reynolds)
-    start = np.log(np.maximum(laminar, 0.2 / factor * np.power(reynolds, 0.875)))
-    return np.exp(secant(miss, start))
+    height = ks / (7.4 if factor == 2.0 else 14.8)
+    inverse = -1.8 * np.log10(np.power(height, 1.11) + np.minimum(6.9 / reynolds, 0.05))
+    turbulent = reynolds / (np.sqrt(8.0) * factor * inverse)
+    start = np.log(laminar if model.mixing_length == "laminar" else np.maximum(laminar, turbulent))
+    return (np.exp(secant(miss, start, 1.1)),)
 
 
 @dataclass(frozen=True, slots=True, eq=False, repr=False)
@@ -208,7 +233,7 @@ class DevelopedFlow:
 def _nodes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Grid, Floats, Floats, Floats]:
     shift = model.shift(ks * re_tau) if np.any(ks > 0) else np.zeros_like(re_tau)
     grid = make_grid(re_tau, model.split)
-    slope, nu_t = model.slope(grid, re_tau, shift)
+    slope, nu_t = model.gradient(grid, re_tau, shift, *model.closing(grid, re_tau))
     velocity = re_tau[:, np.newaxis, np.newaxis] * running(slope, grid)
     return grid, slope, nu_t, velocity
 
@@ -230,7 +255,7 @@ def _profiles(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, ...]:
 def _fluxes(model: _Model, re_tau: Floats, ks: Floats) -> tuple[Floats, Floats]:
     grid, _, _, u = _nodes(model, re_tau, ks)
     if model.geometry == "couette":  # the other half of the gap: twice the middle's speed less u
-        middle = _bulk(model, re_tau, ks)[1]
+        middle = _bulk(model, re_tau, ks, even=False)[1]
         v = 2.0 * middle[:, np.newaxis, np.newaxis] - u
         square, cube = total(grid.width * (u * u + v * v)), total(grid.width * (u**3 + v**3))
         return 0.5 * square / (middle * middle), 0.5 * cube / (middle * middle * middle)
@@ -421,9 +446,9 @@ def developed(
     size = shape.size
     first, rough = arrays.spread(first, size), arrays.spread(rough, size)
     ks = rough * (2.0 if geometry == "pipe" else 4.0)  # over R or h
-    if re_tau is None:
-        (first,) = in_blocks(lambda r, k: (_solve(model, r, k),), first, ks)
-    bulk, centre = in_blocks(lambda r, k: _bulk(model, r, k), first, ks)
+    if size and re_tau is None:
+        (first,) = _by_wall(model, partial(_solve, model), first, ks)
+    bulk, centre = _by_wall(model, partial(_bulk, model), first, ks) if size else (first, first)
     re = _reynolds(model, first, bulk)
     model.use(re)
     return DevelopedFlow(

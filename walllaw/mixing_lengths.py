@@ -39,6 +39,12 @@ class MixingModel:
         return 0.5
 
     @property
+    def even(self) -> bool:
+        """Whether the length has no kink, and constants of the usual size."""
+        usual = 0.3 <= self.kappa <= 0.6 and 15.0 <= self.A_plus <= 60.0
+        return usual and self.mixing_length in ("nikuradse", "linear", "cess")
+
+    @property
     def law(self) -> VanDriest:
         """The law of the wall under constant stress."""
         return VanDriest(self.kappa, self.A_plus)
@@ -71,18 +77,47 @@ class MixingModel:
         """
         if self.mixing_length == "laminar":
             return tau, np.zeros_like(tau)
-        d = shift[:, np.newaxis, np.newaxis]
-        y, e = grid.y_plus + d, grid.eta + d / re_tau[:, np.newaxis, np.newaxis]
-        damping = -np.expm1(-y / self.A_plus * self._sharpened(p_plus))
+        square = self._square(grid, re_tau, shift, p_plus)
+        slope = self._slope(square, tau)
+        if self.mixing_length == "cess":
+            return slope, 2.0 * square / (1.0 + np.sqrt(1.0 + 4.0 * square))
+        return slope, square * slope
+
+    def slope(
+        self, grid: Grid, re_tau: Floats, shift: Floats, tau: Floats, p_plus: Floats
+    ) -> Floats:
+        """Return the first of these alone, the same to the last digit."""
+        if self.mixing_length == "laminar":
+            return tau
+        return self._slope(self._square(grid, re_tau, shift, p_plus), tau)
+
+    def _slope(self, square: Floats, tau: Floats) -> Floats:
+        # in place: on whole blocks a new array costs as much as the arithmetic
+        root = 4.0 * square
+        if self.mixing_length != "cess":
+            root *= tau
+        root += 1.0
+        np.sqrt(root, out=root)
+        root += 1.0
+        root *= 0.5
+        return np.divide(tau, root, out=root)
+
+    def _square(self, grid: Grid, re_tau: Floats, shift: Floats, p_plus: Floats) -> Floats:
+        """Return the square of the length in wall units; of Cess, of that which gives nu_t."""
+        y, e = grid.y_plus, grid.eta
+        if np.any(shift != 0.0):
+            d = shift[:, np.newaxis, np.newaxis]
+            y, e = y + d, e + d / re_tau[:, np.newaxis, np.newaxis]
+        damping = y * (-1.0 / self.A_plus * self._sharpened(p_plus))
+        np.expm1(damping, out=damping)
         if self.mixing_length == "cess":
             r = np.minimum(e, 1.0)
-            x = self.kappa * y * (2.0 - r) * (3.0 - r * (4.0 - 2.0 * r)) / 3.0 * damping
-            nu_t = 0.5 * (x * x) / (1.0 + np.sqrt(1.0 + x * x))
-            return tau / (1.0 + nu_t), nu_t
-        length = self._length(e, y) * damping
-        square = length * length
-        slope = 2.0 * tau / (1.0 + np.sqrt(1.0 + 4.0 * square * tau))
-        return slope, square * slope
+            length = (self.kappa / 6.0) * y * (2.0 - r) * (3.0 - r * (4.0 - 2.0 * r))
+        else:
+            length = self._length(e, y)
+        damping *= length
+        damping *= damping
+        return damping
 
     def _sharpened(self, p_plus: Floats) -> Floats | float:
         """Return N of Cebeci: falling pressure thickens the sublayer, until none but it is left."""
@@ -103,8 +138,12 @@ class MixingModel:
             return np.minimum(self.kappa * y, limit * (y / e))
         r = relation("mixing_length", "nikuradse")
         e = np.minimum(e, 1.0)
-        polynomial = r["c1"] + e * (r["c2"] + e * (r["c3"] + e * r["c4"]))
-        return self.kappa / r["c1"] * y * polynomial
+        length = r["c4"] * e
+        for name in ("c3", "c2", "c1"):
+            length += r[name]
+            length *= y if name == "c1" else e
+        length *= self.kappa / r["c1"]
+        return length
 
     def use(self, reynolds: Floats) -> None:
         """Note the relations in use; warn outside their range."""

@@ -28,18 +28,22 @@ def _inverse_slope(slope: float) -> tuple[float, float]:
     return head, float(exact - Fraction(head))
 
 
-def secant(miss: Callable[[Floats], Floats], start: Floats, rounds: int = 24) -> Floats:
+def secant(
+    miss: Callable[[Floats], Floats], start: Floats, slope: float = 1.0, rounds: int = 24
+) -> Floats:
     """Return the roots of near-linear functions, one for each element, by the secant method.
 
-    An element that has converged stays as it is, so that its bits do not depend on its neighbours.
+    ``slope`` is that of the functions, roughly. An element that has converged stays as it is, so that its bits do not depend on its neighbours.
 
     Examples
     --------
     >>> secant(lambda x: x * x - np.array([2.0, 9.0]), np.array([1.0, 2.0]))
     array([1.41421356, 3.        ])
     """
-    a, b = start, start + 0.05
-    fa, fb = miss(a), miss(b)
+    a, fa = start, miss(start)
+    step = np.clip(fa / slope, -1.0, 1.0)
+    b = a - np.where(np.abs(step) < 1e-6, 1e-6, step)  # apart, for a difference that counts
+    fb = miss(b)
     active = np.ones(b.shape, dtype=bool)
     for _ in range(rounds):
         change = fb - fa
