@@ -100,6 +100,22 @@ def developed_flow(flow: DevelopedFlow, form: str) -> bytes:
     return buffer.getvalue()
 
 
+def two_wall_flow(profile: dict[str, NDArray[np.float64]], title: str, form: str) -> bytes:
+    """Return a picture of velocity and stress from wall to wall."""
+    with figure(form) as (axes, buffer):
+        axes.plot(profile["place"], profile["velocity"], color=CURVE, linewidth=1.8,
+                  label="U/U_b")  # fmt: skip
+        axes.plot(profile["place"], profile["stress"], color=SECOND, linewidth=1.0, linestyle="--",
+                  label="stress over that at the first wall")  # fmt: skip
+        axes.axhline(0.0, color=INK, linewidth=0.6)
+        axes.set_xlabel("distance from the inner wall, or the wall at rest, over the gap")
+        axes.set_xlim(0.0, 1.0)
+        axes.grid(which="major", color="#dddddd", linewidth=0.6)
+        axes.set_title(title, fontsize=9)
+        axes.legend(frameon=False)
+    return buffer.getvalue()
+
+
 def friction_chart(
     re: NDArray[np.float64], rough: NDArray[np.float64], found: NDArray[np.float64],
     colebrook: NDArray[np.float64], form: str,

@@ -33,7 +33,8 @@ def secant(
 ) -> Floats:
     """Return the roots of near-linear functions, one for each element, by the secant method.
 
-    ``slope`` is that of the functions, roughly. An element that has converged stays as it is, so that its bits do not depend on its neighbours.
+    ``slope`` is that of the functions, roughly. An element that has converged stays as it is, so
+    that its bits do not depend on its neighbours.
 
     Examples
     --------

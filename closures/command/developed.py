@@ -15,11 +15,11 @@ if TYPE_CHECKING:
 
 GEOMETRIES = ("pipe", "channel", "open-channel", "couette", "annulus")
 _QUANTITIES = {
-    "diameter": ("m", "of the pipe"),
+    "diameter": ("m", "of the pipe; outer one of the annulus"),
     "height": ("m", "of the channel or gap; depth of the open channel"),
     "roughness": ("m", "equivalent sand-grain height"),
     "bulk_velocity": ("m/s", "mean over the area; half the speed of the wall of a couette flow"),
-    "volume_flow": ("m3/s", "of the pipe"),
+    "volume_flow": ("m3/s", "of the pipe or annulus"),
     "pressure_gradient": ("Pa/m", "fall of pressure per length; needs a density"),
     "kinematic_viscosity": ("m2/s", "of the fluid"),
     "density": ("kg/m3", "of the fluid"),
@@ -82,13 +82,17 @@ def command(
     length = mixing_length or ("linear" if geometry == "couette" else "nikuradse")
     closing = {"mixing_length": length, "damping": damping}
     closing |= {n: asked.pop(n) for n in ("kappa", "A_plus") if n in asked}
+    closing["roughness_model"] = roughness_model
     with range_warnings():
-        if not moody and (geometry == "annulus" or "stress_ratio" in asked):
-            content: str | bytes = _two_walls(geometry, asked, closing, form)
+        amounts = _si(asked, fluid)
+        if moody:
+            content = _moody(geometry, amounts, closing, form)
+        elif geometry == "annulus" or "stress_ratio" in asked:
+            from closures.command.two_walls import two_walls
+
+            content = two_walls(geometry, amounts, closing, form)
         else:
-            closing["roughness_model"] = roughness_model
-            make = _moody if moody else _passage
-            content = make(geometry, _si(asked, fluid), closing, form)
+            content = _passage(geometry, amounts, closing, form)
     if isinstance(content, bytes):
         emit_bytes(content, output)
     else:
@@ -109,7 +113,8 @@ def _si(asked: dict[str, Any], name: str | None) -> dict[str, float]:
     return amounts
 
 
-def _refuse(amounts: dict[str, Any], subject: str) -> None:
+def refuse(amounts: dict[str, Any], subject: str) -> None:
+    """Refuse flags that nothing has used."""
     from walllaw.errors import InputError
 
     if amounts:
@@ -120,8 +125,9 @@ def _passage(
     geometry: str, amounts: dict[str, float], closing: dict[str, Any], form: str
 ) -> str | bytes:
     """Solve one passage and return it in the wanted form."""
-    from walllaw.developed_flow import developed, driven
+    from walllaw.developed_flow import developed
     from walllaw.errors import InputError
+    from walllaw.flow_drive import driven
 
     length = amounts.pop("diameter" if geometry == "pipe" else "height", None)
     if length is not None and not 0.0 < length < 1e30:
@@ -158,13 +164,14 @@ def _passage(
             raise InputError("--roughness", "a relative roughness as well", "one of the two")
         amounts["relative_roughness"] = amounts.pop("roughness") / hydraulic
     rough = amounts.pop("relative_roughness", 0.0)
-    _refuse(amounts, f"a {geometry} flow")
+    refuse(amounts, f"a {geometry} flow")
     flow = developed(geometry, **numbers, relative_roughness=rough, **closing)
     if form in ("svg", "png"):
         from closures import pictures
 
         return pictures.developed_flow(flow, form)
-    return _written(flow, _summary(flow, size, nu, density, prandtl), rough, form)
+    scale = None if size is None or nu is None else (size, flow.si(size, nu)["friction_velocity"])
+    return _written(flow, _summary(flow, size, nu, density, prandtl), rough, form, scale)
 
 
 def _summary(
@@ -204,8 +211,9 @@ def _summary(
 
 
 def _written(
-    flow: DevelopedFlow, summary: dict[str, tuple[float, str]], rough: float, form: str
-) -> str:
+    flow: DevelopedFlow, summary: dict[str, tuple[float, str]], rough: float, form: str,
+    scale: tuple[float, float] | None,
+) -> str:  # fmt: skip
     import numpy as np
 
     if form in ("text", "markdown"):
@@ -213,26 +221,42 @@ def _written(
             f"developed {flow.geometry} flow, mixing length {flow.mixing_length}, "
             f"kappa {flow.kappa:g}, A+ {flow.A_plus:g}"
         )
-        return _table(
+        return table(
             head + (f", k_s/D_h {rough:g}" if rough else ""), summary, form, flow.mixing_length
         )
     profile = flow.profiles()
     # panels that a small Re_tau does not need repeat a node
     keep = np.concatenate([[True], np.diff(profile["eta"]) > 0.0])
+    if scale is not None:
+        size, friction_velocity = scale
+        profile["wall_distance"] = size * profile["eta"]
+        profile["velocity"] = friction_velocity * profile["u_plus"]
     columns = {n: v[keep].tolist() for n, v in profile.items()}
+    data = {
+        "geometry": flow.geometry, "mixing_length": flow.mixing_length, "kappa": flow.kappa,
+        "A_plus": flow.A_plus, "relative_roughness": rough,
+    }  # fmt: skip
+    return columns_and_summary(columns, data, summary, form)
+
+
+def columns_and_summary(
+    columns: dict[str, list[float]], head: dict[str, Any], summary: dict[str, tuple[float, str]],
+    form: str,
+) -> str:  # fmt: skip
+    """Return a profile as csv, or with its summary as json; SI where a name has no wall unit."""
     if form == "csv":
         rows = zip(*columns.values(), strict=True)
         return "\n".join([",".join(columns), *(",".join(map(repr, row)) for row in rows)])
     data = {
-        "geometry": flow.geometry, "mixing_length": flow.mixing_length, "kappa": flow.kappa,
-        "A_plus": flow.A_plus, "relative_roughness": rough,
+        **head,
         "summary": {n: {"value": v, "unit": u} for n, (v, u) in summary.items()},
         "profile": columns,
-    }  # fmt: skip
+    }
     return json.dumps(data, indent=1, allow_nan=False)
 
 
-def _table(head: str, summary: dict[str, tuple[float, str]], form: str, length: str) -> str:
+def table(head: str, summary: dict[str, tuple[float, str]], form: str, length: str) -> str:
+    """Return a summary as text or markdown, with the evidence of the mixing length."""
     from closures.command import CAUTION
 
     tail = [_evidence(length), CAUTION]
@@ -255,43 +279,6 @@ def _evidence(length: str) -> str:
     return f"{r.title} (source {r.source}, {r.status}); Re {low:g} to {high:g}."
 
 
-def _two_walls(
-    geometry: str, asked: dict[str, Any], closing: dict[str, Any], form: str
-) -> str:  # fmt: skip
-    """Solve flow between unlike walls: an annulus, or Couette flow with a pressure gradient."""
-    from walllaw.errors import InputError
-    from walllaw.two_wall_flow import annulus_flow, couette_poiseuille_flow
-
-    if geometry not in ("annulus", "couette"):
-        raise InputError("--stress-ratio", geometry, "couette")
-    if form in ("csv", "svg", "png"):
-        raise InputError("--format", form, f"text, json or markdown for {geometry} flow")
-    takes: tuple[str, ...] = ("radius_ratio", "reynolds", "re_tau")
-    if geometry == "couette":
-        takes = ("stress_ratio", "re_tau")
-    numbers = {n: asked.pop(n) for n in takes if n in asked}
-    _refuse(asked, f"{geometry} flow between unlike walls")
-    if geometry == "annulus":
-        if "radius_ratio" not in numbers:
-            raise InputError("--radius-ratio", "nothing", "inner over outer radius")
-        flow: Any = annulus_flow(**numbers, **closing)
-        names: tuple[str, ...] = ("radius_ratio", "reynolds", "re_tau", "darcy_friction",
-                 "bulk_u_plus", "zero_stress_radius", "stress_ratio", "peak_ratio")  # fmt: skip
-    else:
-        if "re_tau" not in numbers:
-            raise InputError("--stress-ratio", "no flow", "--re-tau of the wall at rest with it")
-        flow = couette_poiseuille_flow(**numbers, **closing)
-        names = ("stress_ratio", "reynolds", "re_tau", "bulk_u_plus", "wall_u_plus",
-                 "pressure_gradient_plus")  # fmt: skip
-    summary = {n: (float(getattr(flow, n)), "1") for n in names}
-    if form == "json":
-        data = {"geometry": geometry, **closing}
-        data["summary"] = {n: {"value": v, "unit": u} for n, (v, u) in summary.items()}
-        return json.dumps(data, indent=1, allow_nan=False)
-    length = closing["mixing_length"]
-    return _table(f"developed {geometry} flow, mixing length {length}", summary, form, length)
-
-
 def _moody(geometry: str, asked: dict[str, Any], closing: dict[str, Any], form: str) -> str | bytes:
     """Return friction against Re for a family of roughnesses, with Colebrook-White beside it."""
     import numpy as np
@@ -302,7 +289,7 @@ def _moody(geometry: str, asked: dict[str, Any], closing: dict[str, Any], form: 
 
     if geometry != "pipe":
         raise InputError("--moody", geometry, "pipe")
-    _refuse(asked, "the chart")
+    refuse(asked, "the chart")
     re, rough = np.geomspace(1e4, 1e8, 41), np.array(_FAMILY)
     found = developed("pipe", reynolds=re[:, np.newaxis], relative_roughness=rough, **closing)
     colebrook = friction.colebrook(re[:, np.newaxis], rough)

@@ -53,6 +53,40 @@ def test_couette_flow_with_a_pressure_gradient(capsys):
     assert "wall_u_plus" in out(capsys, "couette", "--stress-ratio", "-0.5", "--re-tau", "900")
 
 
+def test_annulus_in_units_as_profile_and_picture(capsys, tmp_path):
+    case = ["annulus", "--radius-ratio", "0.5", "--diameter", "80 mm", "--fluid", "water",
+            "--temperature", "20 degC", "--roughness", "0.02 mm"]  # fmt: skip
+    data = json.loads(out(capsys, *case, "--bulk-velocity", "2 m/s", "--format", "json"))
+    values = {n: row["value"] for n, row in data["summary"].items()}
+    assert values["bulk_velocity"] == pytest.approx(2.0, rel=1e-10)
+    # force balance: fall of pressure over density = f U_b^2/(2 D_h), D_h twice the gap of 20 mm
+    fall = values["darcy_friction"] * 4.0 / (2.0 * 0.04)
+    assert values["kinematic_pressure_gradient"] == pytest.approx(fall, rel=1e-10)
+    again = out(capsys, *case, "--volume-flow", f"{values['volume_flow']!r} m3/s")
+    assert f"{values['re_tau']:.6g}" in again
+    profile = data["profile"]
+    assert profile["wall_distance"][-1] < 0.02
+    assert max(profile["si_velocity"]) == pytest.approx(2.0 * values["peak_ratio"], rel=1e-3)
+    rows = out(capsys, *case, "--bulk-velocity", "2", "--format", "csv").splitlines()
+    assert rows[0].startswith("place,velocity,stress,nu_t")
+    assert len(rows) == len(profile["place"]) + 1
+    file = tmp_path / "a.svg"
+    assert (
+        run(["developed", *case, "--bulk-velocity", "2", "--format", "svg", "-o", str(file)]) == 0
+    )
+    assert file.stat().st_size > 5000
+    text = out(capsys, "couette", "--stress-ratio", "-0.4", "--re-tau", "900", "--height", "1 cm",
+               "--fluid", "air")  # fmt: skip
+    assert "wall_velocity" in text
+
+
+def test_profile_in_si(capsys):
+    case = ["channel", "--height", "0.1 m", "--fluid", "air", "--bulk-velocity", "12 m/s"]
+    rows = list(csv.DictReader(io.StringIO(out(capsys, *case, "--format", "csv"))))
+    assert float(rows[-1]["wall_distance"]) == pytest.approx(0.05, rel=1e-3)
+    assert 12.0 < float(rows[-1]["velocity"]) < 15.0
+
+
 def test_units_and_every_drive_agree(capsys):
     case = ["pipe", "--diameter", "260 mm", "--fluid", "water", "--temperature", "8 degC",
             "--roughness", "0.045 mm", "--format", "json"]  # fmt: skip
@@ -104,7 +138,11 @@ def test_a_range_left_is_said(capsys):
      (["pipe", "--diameter", "0", "--fluid", "air", "--bulk-velocity", "3"], "--diameter"),
      (["channel", "--height", "0.1", "--fluid", "air", "--volume-flow", "3"], "--volume-flow"),
      (["pipe", "--reynolds", "1e5", "--roughness", "1 mm"], "--diameter"),
-     (["annulus", "--reynolds", "1e5", "--radius-ratio", "0.5", "--format", "svg"], "annulus"),
+     (["annulus", "--reynolds", "1e5", "--radius-ratio", "0.5", "--pressure-gradient", "3"], "--pressure-gradient"),
+     (["annulus", "--bulk-velocity", "3", "--radius-ratio", "0.5"], "--diameter"),
+     (["annulus", "--reynolds", "1e5", "--radius-ratio", "0.5", "--roughness", "1 mm"], "--roughness"),
+     (["annulus", "--reynolds", "1e5", "--radius-ratio", "0.5", "--roughness-model", "colebrok"], "did you mean 'colebrook'"),
+     (["couette", "--stress-ratio", "0.5", "--re-tau", "900", "--height", "-1"], "--height"),
      (["couette", "--stress-ratio", "0.5"], "--re-tau"),
      (["pipe", "--stress-ratio", "0.5", "--re-tau", "900"], "--stress-ratio"),
      (["couette", "--stress-ratio", "0", "--re-tau", "900"], "stress_ratio"),

@@ -14,8 +14,8 @@ from hypothesis import strategies as st
 from scipy.integrate import solve_bvp
 
 from walllaw import developed, flow_quadrature, friction, heat
-from walllaw.developed_flow import GEOMETRIES, driven
 from walllaw.errors import InputError, RangeWarning
+from walllaw.flow_drive import GEOMETRIES, driven
 from walllaw.mixing_lengths import LENGTHS, MixingModel, constants
 
 DATA = Path(__file__).parents[1] / "reference" / "data"

@@ -101,6 +101,61 @@ def test_the_moving_wall_speeds_up_with_its_stress():
     assert np.all(np.diff(speed[50:]) > 0.0)
 
 
+def test_laminar_annulus_profile_is_exact():
+    ratio = 0.4
+    p = annulus_flow(ratio, reynolds=500.0, mixing_length="laminar").profiles()
+    r = ratio + (1.0 - ratio) * p["place"]
+    # Shah and London 1978: u ~ 1 - r^2 + 2 r_m^2 ln r
+    m2 = (1.0 - ratio**2) / (2.0 * np.log(1.0 / ratio))
+    exact = 1.0 - r * r + 2.0 * m2 * np.log(r)
+    mean = 0.5 * (1.0 + ratio**2 - 2.0 * m2)
+    assert p["velocity"] == pytest.approx(exact / mean, abs=1e-11)
+    stress = (m2 - r * r) / r / ((m2 - ratio**2) / ratio)
+    assert p["stress"] == pytest.approx(stress, abs=1e-11)
+    assert np.all(np.diff(p["place"]) >= 0.0)
+    assert not p["nu_t"].any()
+
+
+@pytest.mark.parametrize("ratio", [-0.6, 0.3])
+def test_laminar_couette_poiseuille_profile_is_exact(ratio):
+    flow = couette_poiseuille_flow(50.0, ratio, mixing_length="laminar")
+    p = flow.profiles()
+    e = 2.0 * p["place"]
+    exact = 50.0 * (e - 0.25 * (1.0 - ratio) * e * e) / flow.bulk_u_plus
+    assert p["velocity"] == pytest.approx(exact, abs=1e-11)
+    assert p["stress"] == pytest.approx(1.0 - 0.5 * (1.0 - ratio) * e, abs=1e-12)
+
+
+@pytest.mark.parametrize("flow", [
+    annulus_flow(0.3, reynolds=2e5, relative_roughness=1e-3, **PIPE),
+    couette_poiseuille_flow(3000.0, [-0.5, 0.5], relative_roughness=1e-3),
+])  # fmt: skip
+def test_profiles_carry_the_flow_and_join(flow):
+    p = flow.profiles()
+    weight = 1.0
+    if hasattr(flow, "radius_ratio"):
+        r = flow.radius_ratio + (1.0 - flow.radius_ratio) * p["place"]
+        weight = 2.0 * r / (1.0 + flow.radius_ratio)
+    assert np.trapezoid(weight * p["velocity"], p["place"]) == pytest.approx(1.0, abs=3e-3)
+    # no jump where the layers meet
+    assert np.max(np.abs(np.diff(p["velocity"], axis=-1))) < 0.12
+
+
+def test_rough_annulus_and_gap_against_one_wall_flows():
+    thin = annulus_flow(0.999, re_tau=2e4, relative_roughness=1e-3, mixing_length="nikuradse")
+    channel = developed("channel", re_tau=2e4, relative_roughness=1e-3)
+    assert thin.bulk_u_plus == pytest.approx(channel.bulk_u_plus, rel=1e-5)
+    still = couette_poiseuille_flow(2e4, -1.0, relative_roughness=1e-3, mixing_length="nikuradse")
+    assert still.bulk_u_plus == pytest.approx(channel.bulk_u_plus, rel=1e-11)
+    couette = developed("couette", re_tau=2e4, relative_roughness=1e-3, mixing_length="linear")
+    moving = couette_poiseuille_flow(2e4, 1.0, relative_roughness=1e-3)
+    assert moving.bulk_u_plus == pytest.approx(couette.bulk_u_plus, rel=1e-11)
+    smooth = annulus_flow(0.5, reynolds=1e6, **PIPE)
+    rough = annulus_flow(0.5, reynolds=1e6, relative_roughness=[0.0, 1e-5, 1e-3], **PIPE)
+    assert rough.darcy_friction[0] == smooth.darcy_friction
+    assert np.all(np.diff(rough.darcy_friction) > 0.0)
+
+
 @pytest.mark.parametrize(
     ("function", "arguments", "field"),
     [(annulus_flow, {"radius_ratio": 1.0, "reynolds": 1e5}, "radius_ratio"),
